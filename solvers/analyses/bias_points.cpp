@@ -1,0 +1,3 @@
+#include "solvers/analyses/bias_points.hpp"
+
+namespace bandwright {}
