@@ -70,6 +70,8 @@ std::vector<double> layer_boundaries(const Structure& structure);
 /// Donor and acceptor concentrations [m^-3].
 struct Doping {
     double donors = 0, acceptors = 0;
+    /// Part of `donors` that is arsenic (Masetti's mobility differs for it).
+    double arsenic = 0;
     double net() const { return donors - acceptors; }
     double total() const { return donors + acceptors; }
 };
