@@ -1,0 +1,136 @@
+#include "core/discretization/discrete_system.hpp"
+
+#include <algorithm>
+#include <cmath>
+#include <utility>
+
+#include "core/base/constants.hpp"
+#include "core/models/fermi_integral.hpp"
+#include "core/models/mobility.hpp"
+#include "core/models/statistics.hpp"
+
+namespace bandwright {
+
+namespace {
+
+EndCoefficients end_coefficients(const Structure& structure, const Material& material) {
+    const Bands bands = bands_at(material, structure.temperature);
+    const double kT = constants::thermal_voltage(structure.temperature);  // [eV]
+    EndCoefficients end{};
+    end.affinity = bands.electron_affinity / kT;
+    end.negative_ionization = -(bands.electron_affinity + bands.bandgap) / kT;
+    end.log_Nc = std::log(bands.Nc);
+    end.log_Nv = std::log(bands.Nv);
+    end.log_intrinsic_squared = bands.log_intrinsic_squared;
+    end.intrinsic_squared = std::exp(std::max(bands.log_intrinsic_squared, -700.0));
+    const double trap = material.has("trap_level") ? material.value("trap_level") / kT : 0;
+    end.n1 = std::exp(std::clamp(0.5 * bands.log_intrinsic_squared + trap, -650.0, 650.0));
+    end.p1 = std::exp(std::clamp(0.5 * bands.log_intrinsic_squared - trap, -650.0, 650.0));
+    end.tau_n = end.tau_p = 1;
+    for (const std::string& kind : recombination_in_force(structure, material)) {
+        if (kind == "srh") {
+            end.has_srh = true;
+            end.tau_n = material.value("electron_lifetime");
+            end.tau_p = material.value("hole_lifetime");
+        } else if (kind == "auger") {
+            end.auger_n = material.value("electron_auger");
+            end.auger_p = material.value("hole_auger");
+        } else if (kind == "radiative") {
+            end.radiative = material.value("radiative_coefficient");
+        }
+    }
+    end.relative_permittivity = bands.relative_permittivity;
+    end.affinity_energy = bands.electron_affinity;
+    end.bandgap = bands.bandgap;
+    return end;
+}
+
+// Mean of the doping between two depths of one layer, three-point Gauss rule.
+double mean_net(const Structure& structure, std::size_t layer, double from, double to) {
+    const double middle = 0.5 * (from + to), reach = 0.5 * (to - from) * std::sqrt(0.6);
+    return (5 * doping_at(structure, layer, middle - reach).net() + 8 * doping_at(structure, layer, middle).net() +
+            5 * doping_at(structure, layer, middle + reach).net()) /
+           18;
+}
+
+ContactCoefficients contact_coefficients(const DiscreteSystem& system, const Contact& contact, bool is_top) {
+    const Structure& structure = system.structure;
+    const std::size_t cell = is_top ? 0 : system.cells() - 1;
+    const EndCoefficients& end = system.of_cell(cell);
+    const Material& material = structure.materials[structure.layers[system.mesh.layer_of_cell[cell]].material];
+    // The doping at the contact itself (a half cell's mean would be first order), from just inside the layer.
+    const double inside = 1e-9 * system.mesh.width(cell);
+    const double x = is_top ? system.mesh.position.front() + inside : system.mesh.position.back() - inside;
+    const double net = doping_at(structure, system.mesh.layer_of_cell[cell], x).net();
+    const double psi = neutral_potential(bands_at(material, structure.temperature), structure.models.statistics,
+                                         structure.temperature, net) /
+                       system.thermal_voltage;
+    ContactCoefficients result{};
+    result.neutral_psi = psi;
+    const double eta_n = psi + end.affinity, eta_p = -psi + end.negative_ionization;
+    result.log_n = end.log_Nc + eta_n + (system.fermi_dirac ? degeneracy(eta_n).log_gamma : 0);
+    result.log_p = end.log_Nv + eta_p + (system.fermi_dirac ? degeneracy(eta_p).log_gamma : 0);
+    if (net >= 0) result.hole_velocity = contact.hole_velocity;
+    if (net <= 0) result.electron_velocity = contact.electron_velocity;
+    return result;
+}
+
+}  // namespace
+
+DiscreteSystem discretize(const Structure& structure, Mesh mesh) {
+    DiscreteSystem system;
+    system.structure = structure;
+    system.mesh = std::move(mesh);
+    system.thermal_voltage = constants::thermal_voltage(structure.temperature);
+    system.fermi_dirac = structure.models.statistics == Statistics::fermi_dirac;
+    system.series_resistance = structure.top.series_resistance + structure.bottom.series_resistance;
+    for (const Material& material : structure.materials) system.materials.push_back(end_coefficients(structure, material));
+    const std::size_t cells = system.cells();
+    system.material_of_cell.resize(cells);
+    for (std::vector<double>* values : {&system.dielectric, &system.electron_speed, &system.hole_speed, &system.net_left,
+                                        &system.net_right})
+        values->resize(cells);
+    for (std::size_t cell = 0; cell < cells; ++cell) {
+        const std::size_t layer = system.mesh.layer_of_cell[cell];
+        const Material& material = structure.materials[structure.layers[layer].material];
+        system.material_of_cell[cell] = structure.layers[layer].material;
+        const double from = system.mesh.position[cell], to = system.mesh.position[cell + 1], h = to - from;
+        require(h > 0, "a cell has no width");
+        const double middle = 0.5 * (from + to);
+        system.net_left[cell] = mean_net(structure, layer, from, middle);
+        system.net_right[cell] = mean_net(structure, layer, middle, to);
+        system.dielectric[cell] = system.of_cell(cell).relative_permittivity * constants::vacuum_permittivity *
+                                  system.thermal_voltage / (constants::elementary_charge * h);
+        const MobilityModel model = mobility_model(structure, material);
+        const Doping left = doping_at(structure, layer, from + 0.2113248654051871 * h);
+        const Doping right = doping_at(structure, layer, to - 0.2113248654051871 * h);
+        const auto mean_speed = [&](Carrier carrier) {
+            return 0.5 *
+                   (mobility(carrier, model, material, left, structure.temperature) +
+                    mobility(carrier, model, material, right, structure.temperature)) *
+                   system.thermal_voltage / h;
+        };
+        system.electron_speed[cell] = mean_speed(Carrier::electron);
+        system.hole_speed[cell] = mean_speed(Carrier::hole);
+    }
+    system.top = contact_coefficients(system, structure.top, true);
+    system.bottom = contact_coefficients(system, structure.bottom, false);
+    return system;
+}
+
+State neutral_state(const DiscreteSystem& system) {
+    State state;
+    state.unknowns.assign(3 * system.nodes(), 0.0);
+    const Structure& structure = system.structure;
+    for (std::size_t node = 0; node < system.nodes(); ++node) {
+        const std::size_t cell = node < system.cells() ? node : node - 1;
+        const double net = node < system.cells() ? system.net_left[cell] : system.net_right[cell];
+        const Material& material = structure.materials[structure.layers[system.mesh.layer_of_cell[cell]].material];
+        state.unknowns[3 * node] = neutral_potential(bands_at(material, structure.temperature), structure.models.statistics,
+                                                     structure.temperature, net) /
+                                   system.thermal_voltage;
+    }
+    return state;
+}
+
+}  // namespace bandwright
