@@ -39,8 +39,6 @@ struct KinsolSession::Memory {
 
 namespace {
 
-using Memory = KinsolSession;
-
 // No exception may cross the C frames: it is kept and rethrown after KINSol has returned.
 template <class Function>
 int guarded(std::exception_ptr& thrown, Function function) {

@@ -21,6 +21,7 @@ struct NewtonSolver::Work {
 NewtonSolver::NewtonSolver(const DiscreteSystem& system) : work_(std::make_unique<Work>()) { work_->system = &system; }
 NewtonSolver::~NewtonSolver() = default;
 NewtonSolver::NewtonSolver(NewtonSolver&&) noexcept = default;
+NewtonSolver& NewtonSolver::operator=(NewtonSolver&&) noexcept = default;
 Equations& NewtonSolver::equations() { return work_->equations; }
 const DiscreteSystem& NewtonSolver::system() const { return *work_->system; }
 

@@ -60,6 +60,7 @@ class NewtonSolver {
     explicit NewtonSolver(const DiscreteSystem& system);
     ~NewtonSolver();
     NewtonSolver(NewtonSolver&&) noexcept;
+    NewtonSolver& operator=(NewtonSolver&&) noexcept;
 
     /// Solves at an applied voltage [kT/q] from `state`, updated only when converged.
     NewtonReport solve(State& state, double applied_voltage, const NewtonOptions& options = {});

@@ -1,0 +1,177 @@
+#include "solvers/adaptive.hpp"
+
+#include <algorithm>
+#include <cmath>
+
+#include "core/base/constants.hpp"
+#include "core/figures/terminal.hpp"
+#include "core/mesh/first_spacing.hpp"
+#include "core/mesh/refine.hpp"
+#include "solvers/demand.hpp"
+#include "solvers/point_figures.hpp"
+
+namespace bandwright {
+
+namespace {
+
+constexpr int passes = 4;               // demand passes; the demand settles in three
+constexpr double growth = 0.2;          // of the width per unit of depth; 20 % from cell to cell
+constexpr double least_width = 2e-11;   // [m]
+constexpr std::size_t most_nodes = 400000;
+
+/// A bias at which meshes are judged, and the last state found there.
+struct Sample {
+    double voltage;  // [kT/q]
+    std::optional<State> state;
+    bool reachable = true;
+};
+
+// Extremes of either sign and, outward to them, a quarter and a sixteenth: an edge sweeps as the square root.
+std::vector<Sample> samples_for(const std::vector<double>& biases, double thermal) {
+    double low = 0, high = 0;
+    for (const double bias : biases) {
+        low = std::min(low, bias / thermal);
+        high = std::max(high, bias / thermal);
+    }
+    std::vector<Sample> samples{{0, {}, true}};
+    for (const double extreme : {low, high}) {
+        if (extreme == 0) continue;
+        if (std::abs(extreme) > 60) samples.push_back({extreme / 9, {}, true});
+        samples.push_back({extreme, {}, true});
+    }
+    return samples;
+}
+
+struct Pass {
+    std::unique_ptr<DiscreteSystem> system;
+    std::vector<Demand> demands;
+    std::vector<double> largest;
+};
+
+}  // namespace
+
+AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& biases, double max_current,
+                         const std::function<bool()>& should_stop) {
+    AdaptedMesh result;
+    const double thermal = constants::thermal_voltage(structure.temperature);
+    const double most_flux = max_current / constants::elementary_charge;
+    const double tolerance = structure.mesh.tolerance;
+    const FixedDepths fixed = fixed_depths(structure);
+    std::vector<Sample> samples = samples_for(biases, thermal);
+    const std::vector<Metallurgical> junctions = metallurgical_junctions(structure);
+
+    Spacing spacing = first_spacing(structure, fixed);
+    result.mesh = mesh_from_spacing(fixed, spacing);
+
+    // Solves every sample on a mesh; states of an older mesh serve as guesses.
+    const auto solve_samples = [&](const DiscreteSystem& system, const auto& visit, bool patient) {
+        BiasWalk walk(system);
+        if (!walk.start()) {
+            result.ok = false;
+            result.message = walk.message();
+        }
+        for (Sample& sample : samples) {
+            if (!result.ok || !sample.reachable || (should_stop && should_stop())) continue;
+            bool there = sample.voltage == 0 && walk.voltage() == 0;
+            if (!there && sample.state) {
+                BiasWalk direct(system);
+                there = direct.start_from(*sample.state, sample.voltage);
+                result.iterations += direct.iterations();
+                if (there) {
+                    visit(sample, direct);
+                    sample.state = direct.state();
+                    continue;
+                }
+            }
+            if (!there) {
+                // From equilibrium outward; each sign starts there anew.
+                if ((sample.voltage > 0) != (walk.voltage() > 0) && walk.voltage() != 0) {
+                    result.iterations += walk.iterations();
+                    walk = BiasWalk(system);
+                    walk.start();
+                }
+                const BiasWalk::Arrival arrival = walk.walk_to(sample.voltage, most_flux, should_stop);
+                if (arrival != BiasWalk::Arrival::arrived) {
+                    // The mesh then serves what was reached; the sweep itself will say where it stopped.
+                    if (!patient || arrival == BiasWalk::Arrival::current_limit) sample.voltage = walk.voltage();
+                    sample.reachable = arrival == BiasWalk::Arrival::current_limit;
+                    if (!sample.reachable) continue;
+                }
+            }
+            visit(sample, walk);
+            sample.state = walk.state();
+        }
+        result.iterations += walk.iterations();
+        result.rejected += walk.rejected();
+    };
+    const auto move_states = [&](const Mesh& from, const Mesh& to) {
+        for (Sample& sample : samples)
+            if (sample.state) sample.state->unknowns = interpolated(from, sample.state->unknowns, to, 3);
+    };
+
+    for (int pass = 0; pass < passes; ++pass) {
+        const DiscreteSystem system = discretize(structure, result.mesh);
+        std::vector<Demand> demands;
+        SeenDensities seen;
+        // The first passes aim lower: their demands are uncertain and need not be met exactly.
+        const double aim = pass + 1 < passes ? std::max(tolerance, 1e-3) : tolerance;
+        solve_samples(
+            system,
+            [&](const Sample&, BiasWalk& walk) {
+                for (Demand& demand : demands_of(system, walk.state(), walk.equations())) demands.push_back(std::move(demand));
+                seen.add(walk.equations());
+            },
+            pass > 0);
+        if (!result.ok || (should_stop && should_stop())) return result;
+        spacing = widths_for(result.mesh, demands, largest_widths(system, seen, aim), aim, least_width);
+        limit_growth(spacing, growth);
+        const Mesh next = mesh_from_spacing(fixed, spacing);
+        move_states(result.mesh, next);
+        result.mesh = next;
+        if (result.mesh.nodes() > most_nodes) break;
+    }
+
+    // Scale all widths until nested meshes agree, or to the node count asked for.
+    if (structure.mesh.nodes) {
+        double low = 1e-3, high = 1e3;
+        for (int step = 0; step < 60; ++step) {
+            const double middle = std::sqrt(low * high);
+            (mesh_from_spacing(fixed, spacing, middle).nodes() > *structure.mesh.nodes ? low : high) = middle;
+        }
+        result.mesh = mesh_from_spacing(fixed, spacing, high);
+        return result;
+    }
+    double factor = 1;
+    for (int round = 0; round < 3; ++round) {
+        const DiscreteSystem system = discretize(structure, result.mesh);
+        const DiscreteSystem coarse = discretize(structure, coarsened(result.mesh));
+        double worst = 0;
+        State equilibrium;
+        solve_samples(
+            system,
+            [&](const Sample& sample, BiasWalk& walk) {
+                if (sample.voltage == 0) equilibrium = walk.state();
+                const std::size_t which =
+                    junctions.empty() ? 0 : most_biased_junction(system, junctions, equilibrium, walk.state());
+                const PointFigures fine = point_figures(system, walk.state(), walk.equations(), junctions, which);
+                BiasWalk nested(coarse);
+                State guess = walk.state();
+                guess.unknowns = injected(result.mesh, guess.unknowns, 3);
+                const bool solved = nested.start_from(guess, sample.voltage);
+                result.iterations += nested.iterations();
+                if (!solved) return;
+                const PointFigures other = point_figures(coarse, nested.state(), nested.equations(), junctions, which);
+                worst = std::max(worst, largest_relative_error(fine, other));
+            },
+            true);
+        if (!result.ok || (should_stop && should_stop())) return result;
+        if (worst <= tolerance || result.mesh.nodes() > most_nodes) break;
+        factor *= std::clamp(std::sqrt(0.8 * tolerance / worst), 0.2, 0.85);
+        const Mesh next = mesh_from_spacing(fixed, spacing, factor);
+        move_states(result.mesh, next);
+        result.mesh = next;
+    }
+    return result;
+}
+
+}  // namespace bandwright

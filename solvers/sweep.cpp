@@ -1,0 +1,102 @@
+#include "solvers/sweep.hpp"
+
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <cmath>
+
+#include "core/base/error.hpp"
+#include "core/figures/terminal.hpp"
+
+namespace bandwright {
+
+namespace {
+
+constexpr double least_step = 1e-4;   // [kT/q]; below it nothing physical changes between two biases
+constexpr double most_step = 2500;    // [kT/q]; steps of this size were seen to need no cut
+constexpr int easy_iterations = 10;   // the step doubles when Newton needs no more than these
+
+}  // namespace
+
+std::string describe_failure(const DiscreteSystem& system, double applied_voltage, const NewtonReport& report) {
+    static constexpr const char* names[] = {"the potential", "the electron density", "the hole density"};
+    const std::size_t node = report.worst_node;
+    const std::size_t cell = std::min(node, system.cells() - 1);
+    const double change = report.steps.empty() ? 0 : report.steps.back();
+    const std::string remaining = report.worst_unknown == 0 ? fmt::format("{:.2g} kT/q", change)
+                                                            : fmt::format("{:.2g} of its value", change);
+    return fmt::format("at {:.6g} V: no convergence after {} Newton steps ({}); the largest remaining change is {} in {} at "
+                       "{:.6g} um (layer \"{}\")",
+                       applied_voltage * system.thermal_voltage, report.iterations,
+                       report.message.empty() ? "the step no longer shrinks" : report.message, remaining,
+                       names[report.worst_unknown], shown(system.mesh.position[node], Unit::length),
+                       system.structure.layers[system.mesh.layer_of_cell[cell]].name);
+}
+
+BiasWalk::BiasWalk(const DiscreteSystem& system) : solver_(system) {}
+
+bool BiasWalk::start() { return start_from(neutral_state(solver_.system()), 0); }
+
+bool BiasWalk::start_from(State guess, double applied_voltage) {
+    guess.contact_voltage = solver_.system().series_resistance > 0 ? guess.contact_voltage : applied_voltage;
+    NewtonOptions options;
+    options.most_iterations = 100;
+    report_ = solver_.solve(guess, applied_voltage, options);
+    iterations_ += report_.iterations;
+    fresh_ = true;
+    if (!report_.converged()) {
+        message_ = describe_failure(solver_.system(), applied_voltage, report_);
+        return false;
+    }
+    state_ = std::move(guess);
+    voltage_ = applied_voltage;
+    return true;
+}
+
+BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux, const std::function<bool()>& should_stop) {
+    double step = std::max(step_, std::abs(target - voltage_) < step_ ? step_ : 0.0);
+    while (voltage_ != target) {
+        if (should_stop && should_stop()) return Arrival::interrupted;
+        const double remaining = target - voltage_;
+        const bool last = std::abs(remaining) <= step;
+        const double change = last ? remaining : std::copysign(step, remaining);
+        const double next = last ? target : voltage_ + change;
+        State trial = state_;
+        equations();
+        solver_.predict(trial, solver_.tangent(), change);
+        if (solver_.system().series_resistance == 0) trial.contact_voltage = next;
+        report_ = solver_.solve(trial, next);
+        iterations_ += report_.iterations;
+        fresh_ = true;
+        if (!report_.converged()) {
+            ++rejected_;
+            fresh_ = false;
+            step = 0.5 * std::min(step, std::abs(change));
+            if (step < least_step) {
+                message_ = describe_failure(solver_.system(), next, report_);
+                return Arrival::stopped;
+            }
+            continue;
+        }
+        state_ = std::move(trial);
+        voltage_ = next;
+        if (report_.iterations <= easy_iterations) step = std::min(most_step, std::max(step, 2 * std::abs(change)));
+        step_ = step;
+        if (std::abs(flux()) >= most_flux) return Arrival::current_limit;
+    }
+    return Arrival::arrived;
+}
+
+const Equations& BiasWalk::equations() {
+    if (!fresh_) {
+        // After a rejected step the workspace holds another state: bring back this one, with its factorisation.
+        require(assemble(solver_.system(), state_, solver_.equations()), "a converged state gives no finite number");
+        solver_.equations().jacobian.factorize();
+        fresh_ = true;
+    }
+    return solver_.equations();
+}
+
+double BiasWalk::flux() { return terminal_current(solver_.system(), state_, equations()).flux; }
+
+}  // namespace bandwright
