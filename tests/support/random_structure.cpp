@@ -8,7 +8,7 @@
 #include <cstdint>
 #include <cstdlib>
 
-namespace bandwright::testing {
+namespace bandwright {
 
 namespace {
 
@@ -203,4 +203,4 @@ std::vector<double> random_biases(unsigned seed) {
     return {rounded(forward), rounded(small_reverse), rounded(large_reverse)};
 }
 
-}  // namespace bandwright::testing
+}  // namespace bandwright

@@ -6,7 +6,7 @@
 #include <string>
 #include <vector>
 
-namespace bandwright::testing {
+namespace bandwright {
 
 /// JSON text of a structure drawn from a seed.
 ///
@@ -29,4 +29,4 @@ std::string random_structure(unsigned seed);
 /// none.
 std::vector<double> random_biases(unsigned seed);
 
-}  // namespace bandwright::testing
+}  // namespace bandwright
