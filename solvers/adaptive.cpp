@@ -60,6 +60,9 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
     std::vector<Sample> samples = samples_for(biases, thermal);
     const std::vector<Metallurgical> junctions = metallurgical_junctions(structure);
 
+    std::vector<double> junction_depths;
+    for (const Metallurgical& junction : junctions) junction_depths.push_back(junction.depth);
+
     Spacing spacing = first_spacing(structure, fixed);
     result.mesh = mesh_from_spacing(fixed, spacing);
 
@@ -123,7 +126,7 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
             },
             pass > 0);
         if (!result.ok || (should_stop && should_stop())) return result;
-        spacing = widths_for(result.mesh, demands, largest_widths(system, seen, aim), aim, least_width);
+        spacing = widths_for(result.mesh, demands, largest_widths(system, seen, junction_depths, aim), aim, least_width);
         limit_growth(spacing, growth);
         const Mesh next = mesh_from_spacing(fixed, spacing);
         move_states(result.mesh, next);

@@ -126,7 +126,8 @@ std::vector<Demand> demands_of(const DiscreteSystem& system, const State& state,
     return demands;
 }
 
-std::vector<double> largest_widths(const DiscreteSystem& system, const SeenDensities& seen, double tolerance) {
+std::vector<double> largest_widths(const DiscreteSystem& system, const SeenDensities& seen,
+                                   const std::vector<double>& junction_depths, double tolerance) {
     const std::size_t cells = system.cells();
     std::vector<double> widths(cells, INFINITY);
     for (std::size_t cell = 0; cell < cells; ++cell) {
@@ -134,9 +135,12 @@ std::vector<double> largest_widths(const DiscreteSystem& system, const SeenDensi
         const double density = std::max(seen.most[cell], std::abs(0.5 * (system.net_left[cell] + system.net_right[cell])));
         const double debye = std::sqrt(system.dielectric[cell] * h / std::max(density, 1e10));
         if (seen.least[cell] < 0.9 * seen.most[cell]) {
-            // Edge of a layer of charge q N W with W some Debye lengths; see the derivation in DEVELOPERS.md.
-            constexpr double typical_width = 30;  // in Debye lengths
-            widths[cell] = std::min(widths[cell], debye * std::sqrt(3 * tolerance * typical_width));
+            // Edge of a layer of charge q N W; see the derivation in DEVELOPERS.md.
+            constexpr double least_layer = 30;  // in Debye lengths
+            double distance = INFINITY;
+            for (const double depth : junction_depths) distance = std::min(distance, std::abs(system.mesh.position[cell] - depth));
+            const double layer = std::isfinite(distance) ? std::max(least_layer, distance / debye) : least_layer;
+            widths[cell] = std::min(widths[cell], debye * std::sqrt(3 * tolerance * layer));
         }
     }
     // Doping curvature in neutral regions: the error of psi in kT/q is h^2 N'' / (24 N).

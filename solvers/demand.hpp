@@ -23,6 +23,7 @@ std::vector<Demand> demands_of(const DiscreteSystem& system, const State& state,
 
 /// Largest widths [m] that do not depend on one state: Debye lengths where an edge sweeps, and the curvature of the
 /// doping where a region is neutral.
-std::vector<double> largest_widths(const DiscreteSystem& system, const SeenDensities& seen, double tolerance);
+std::vector<double> largest_widths(const DiscreteSystem& system, const SeenDensities& seen,
+                                   const std::vector<double>& junction_depths, double tolerance);
 
 }  // namespace bandwright

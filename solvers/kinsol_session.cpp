@@ -28,7 +28,7 @@ struct KinsolSession::Memory {
 
     void release() {
         if (kinsol) KINFree(&kinsol);
-        if (linear) SUNLinSolFree(linear);
+        if (linear) SUNLinSolFreeEmpty(linear);  // its content is ours, not to be freed
         if (unknowns) N_VDestroy(unknowns);
         if (scale) N_VDestroy(scale);
         kinsol = nullptr;
@@ -84,11 +84,13 @@ std::string KinsolSession::solve(std::span<double> unknowns, int most_iterations
             });
         };
         require(KINInit(m.kinsol, system, m.unknowns) == KIN_SUCCESS, "KINInit fails");
-        // A solver that carries its own matrix: the step comes from our block elimination, already turned into the
-        // density step, so KINSOL's linear residuals mean nothing and are not used.
+        // A solver that carries its own matrix. KINSOL 6.4 takes such a solver only as an iterative one (it refuses the
+        // kind "matrix embedded"), and then wants a matrix-vector product, which is never called. The step comes from our
+        // block elimination, already turned into the density step, so KINSOL's linear residuals mean nothing.
         m.linear = SUNLinSolNewEmpty(m.context);
         m.linear->content = &m;
-        m.linear->ops->gettype = [](SUNLinearSolver) { return SUNLINEARSOLVER_MATRIX_EMBEDDED; };
+        m.linear->ops->gettype = [](SUNLinearSolver) { return SUNLINEARSOLVER_ITERATIVE; };
+        m.linear->ops->setatimes = [](SUNLinearSolver, void*, SUNATimesFn) -> int { return SUNLS_SUCCESS; };
         m.linear->ops->solve = [](SUNLinearSolver s, SUNMatrix, N_Vector x, N_Vector, realtype) {
             Memory& memory = *static_cast<Memory*>(s->content);
             return guarded(memory.thrown, [&] {

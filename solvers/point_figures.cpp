@@ -92,6 +92,8 @@ double largest_relative_error(const PointFigures& fine, const PointFigures& coar
                               figure == PointFigure::depletion_bottom_edge;
         if (is_depth) scale = std::isnan(fine[PointFigure::depletion_width]) ? INFINITY : fine[PointFigure::depletion_width];
         if (figure == PointFigure::junction_voltage) continue;
+        // At equilibrium the current is zero and has no relative error.
+        if (figure == PointFigure::current_density && fine[PointFigure::junction_voltage] == 0) continue;
         const double excess = error[k] - fine.floors[k];
         if (excess > 2 * fine.floors[k] && scale > 0) worst = std::max(worst, excess / scale);
     }

@@ -48,9 +48,18 @@ bool BiasWalk::start_from(State guess, double applied_voltage) {
         message_ = describe_failure(solver_.system(), applied_voltage, report_);
         return false;
     }
-    state_ = std::move(guess);
-    voltage_ = applied_voltage;
+    accept(std::move(guess), applied_voltage);
     return true;
+}
+
+void BiasWalk::accept(State state, double applied_voltage) {
+    state_ = std::move(state);
+    voltage_ = applied_voltage;
+    if (applied_voltage != 0) return;
+    // Equilibrium: both quasi-Fermi potentials are zero exactly; rounding of the linear solve is not kept.
+    for (std::size_t node = 0; node < state_.nodes(); ++node) state_.unknowns[3 * node + 1] = state_.unknowns[3 * node + 2] = 0;
+    state_.contact_voltage = 0;
+    fresh_ = false;
 }
 
 BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux, const std::function<bool()>& should_stop) {
@@ -78,8 +87,7 @@ BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux, const std::
             }
             continue;
         }
-        state_ = std::move(trial);
-        voltage_ = next;
+        accept(std::move(trial), next);
         if (report_.iterations <= easy_iterations) step = std::min(most_step, std::max(step, 2 * std::abs(change)));
         step_ = step;
         if (std::abs(flux()) >= most_flux) return Arrival::current_limit;

@@ -40,6 +40,8 @@ class BiasWalk {
     const DiscreteSystem& system() const { return solver_.system(); }
 
   private:
+    void accept(State state, double applied_voltage);
+
     NewtonSolver solver_;
     State state_;
     double voltage_ = 0;

@@ -10,7 +10,7 @@ namespace bandwright {
 
 namespace {
 
-constexpr double neutral_enough = 1e-7;    // |charge| / |doping| at which a region counts as neutral
+constexpr double neutral_enough = 1e-10;   // |charge| / |doping| at which a region counts as neutral
 constexpr double few_carriers = 0.05;      // carriers / doping below which a side counts as depleted
 
 /// What the search functions below share.
