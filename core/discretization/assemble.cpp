@@ -56,8 +56,9 @@ CellFluxes fluxes(const DiscreteSystem& system, const State& state, std::size_t 
 }
 
 void resize(Equations& equations, std::size_t nodes) {
-    if (equations.flux.size() == nodes - 1) return;
+    if (equations.row_scale.size() == 3 * nodes) return;
     equations.residual.assign(3 * nodes, 0);
+    equations.row_scale.assign(3 * nodes, 1);
     equations.left.resize(nodes - 1);
     equations.right.resize(nodes - 1);
     equations.rate_left.resize(nodes - 1);
@@ -158,6 +159,7 @@ bool assemble(const DiscreteSystem& system, const State& state, Equations& equat
         if (node + 1 == nodes) apply_contact(system.bottom, state, node, false, equations, row);
         for (int r = 0; r < 3; ++r) {
             const double scale = 1 / d[4 * r];
+            equations.row_scale[3 * node + r] = d[4 * r];
             for (int k = 0; k < 3; ++k) {
                 d[3 * r + k] *= scale;
                 lower[3 * r + k] *= scale;

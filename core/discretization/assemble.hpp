@@ -34,6 +34,8 @@ struct Equations {
     /// Rows: Poisson, electrons, holes of node 0, then node 1, ...; each divided by its diagonal, so that an entry is a
     /// correction in kT/q. Size 3 nodes.
     std::vector<double> residual;
+    /// The diagonal that each row was divided by, size 3 nodes.
+    std::vector<double> row_scale;
     /// Derivative of `residual` (contact voltage held fixed).
     BlockTridiagonal jacobian;
     /// Derivative of `residual` with respect to the contact voltage: rows of node 0 only.
