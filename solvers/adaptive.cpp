@@ -42,12 +42,6 @@ std::vector<Sample> samples_for(const std::vector<double>& biases, double therma
     return samples;
 }
 
-struct Pass {
-    std::unique_ptr<DiscreteSystem> system;
-    std::vector<Demand> demands;
-    std::vector<double> largest;
-};
-
 }  // namespace
 
 AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& biases, double max_current,
@@ -56,14 +50,14 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
     const double thermal = constants::thermal_voltage(structure.temperature);
     const double most_flux = max_current / constants::elementary_charge;
     const double tolerance = structure.mesh.tolerance;
-    const FixedDepths fixed = fixed_depths(structure);
+    const FixedDepths& fixed = result.fixed = fixed_depths(structure);
     std::vector<Sample> samples = samples_for(biases, thermal);
     const std::vector<Metallurgical> junctions = metallurgical_junctions(structure);
 
     std::vector<double> junction_depths;
     for (const Metallurgical& junction : junctions) junction_depths.push_back(junction.depth);
 
-    Spacing spacing = first_spacing(structure, fixed);
+    Spacing& spacing = result.spacing = first_spacing(structure, fixed);
     result.mesh = mesh_from_spacing(fixed, spacing);
 
     // Solves every sample on a mesh; states of an older mesh serve as guesses.

@@ -4,23 +4,20 @@
 #pragma once
 
 #include <functional>
-#include <memory>
 #include <string>
 #include <vector>
 
+#include "core/mesh/spacing.hpp"
 #include "solvers/sweep.hpp"
 
 namespace bandwright {
 
-/// A mesh with its discrete system and a walk that stands at equilibrium on it.
-struct Stage {
-    std::unique_ptr<DiscreteSystem> system;
-    std::unique_ptr<BiasWalk> walk;
-};
-
 /// What came of meshing.
 struct AdaptedMesh {
     Mesh mesh;
+    /// The widths and fixed depths it was made from, for meshes of the same shape.
+    Spacing spacing;
+    FixedDepths fixed;
     /// Newton iterations and rejected steps on the way.
     long iterations = 0, rejected = 0;
     bool ok = true;
