@@ -1,0 +1,26 @@
+// Running an analysis for a command: reading, signals, checkpoints, writing, exit status. Shared by bands and iv.
+// Not for: the options of one command (commands/).
+// SPDX-License-Identifier: MIT
+#pragma once
+
+#include "apps/command.hpp"
+#include "core/base/results.hpp"
+#include "core/device/structure.hpp"
+#include "io/input/read_structure.hpp"
+#include "solvers/analyses/bias_points.hpp"
+
+namespace bandwright {
+
+/// Results filled with what the input alone tells: names, bytes, ledger, warnings, measured points.
+Results results_of_input(const std::string& command, const CommonOptions& options, const ReadResult& input);
+
+/// Junction, current limit and biases of a request from the common options.
+BiasRequest request_from(const CommonOptions& options, std::vector<double> biases);
+
+/// Solves, keeps the result file up to date every 8 s, stops on SIGINT and SIGTERM, prints table or JSON.
+Exit solve_and_report(const std::string& command, const CommonOptions& options, const ReadResult& input, const BiasRequest& request);
+
+/// Cautions that belong to a structure: high voltage, wide gap.
+std::vector<std::string> cautions(const Structure& structure, double largest_bias);
+
+}  // namespace bandwright
