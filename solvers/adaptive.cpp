@@ -1,6 +1,7 @@
 #include "solvers/adaptive.hpp"
 
 #include <algorithm>
+#include <array>
 #include <cmath>
 
 #include "core/base/constants.hpp"
@@ -15,6 +16,7 @@ namespace bandwright {
 namespace {
 
 constexpr int passes = 4;               // demand passes; the demand settles in three
+constexpr int rounds = 4;               // of scaling all widths after that
 constexpr double growth = 0.2;          // of the width per unit of depth; 20 % from cell to cell
 constexpr double least_width = 2e-11;   // [m]
 constexpr std::size_t most_nodes = 400000;
@@ -138,11 +140,15 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
         result.mesh = mesh_from_spacing(fixed, spacing, high);
         return result;
     }
-    double factor = 1;
-    for (int round = 0; round < 3; ++round) {
+    // A figure whose error does not fall with the mesh is not limited by it and does not drive it further.
+    using Errors = std::array<double, point_figure_count>;
+    std::vector<Errors> previous;
+    std::vector<std::array<bool, point_figure_count>> stuck(samples.size());
+    double factor = 1, last_scaling = 1;
+    for (int round = 0; round < rounds; ++round) {
         const DiscreteSystem system = discretize(structure, result.mesh);
         const DiscreteSystem coarse = discretize(structure, coarsened(result.mesh));
-        double worst = 0;
+        std::vector<Errors> errors(samples.size());
         State equilibrium;
         solve_samples(
             system,
@@ -158,12 +164,21 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
                 result.iterations += nested.iterations();
                 if (!solved) return;
                 const PointFigures other = point_figures(coarse, nested.state(), nested.equations(), junctions, which);
-                worst = std::max(worst, largest_relative_error(fine, other));
+                errors[static_cast<std::size_t>(&sample - samples.data())] = relative_errors(fine, other);
             },
             true);
         if (!result.ok || (should_stop && should_stop())) return result;
+        double worst = 0;
+        for (std::size_t k = 0; k < samples.size(); ++k)
+            for (std::size_t figure = 0; figure < point_figure_count; ++figure) {
+                // Second order: the error should fall as the square of the width; half of that is asked for.
+                if (round > 0 && errors[k][figure] > previous[k][figure] * std::pow(last_scaling, 1.0)) stuck[k][figure] = true;
+                if (!stuck[k][figure]) worst = std::max(worst, errors[k][figure]);
+            }
         if (worst <= tolerance || result.mesh.nodes() > most_nodes) break;
-        factor *= std::clamp(std::sqrt(0.8 * tolerance / worst), 0.2, 0.85);
+        last_scaling = std::clamp(std::sqrt(0.8 * tolerance / worst), 0.5, 0.85);
+        factor *= last_scaling;
+        previous = errors;
         const Mesh next = mesh_from_spacing(fixed, spacing, factor);
         move_states(result.mesh, next);
         result.mesh = next;

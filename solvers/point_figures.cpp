@@ -81,9 +81,9 @@ std::array<double, point_figure_count> nested_errors(const std::vector<PointFigu
     return errors;
 }
 
-double largest_relative_error(const PointFigures& fine, const PointFigures& coarse) {
+std::array<double, point_figure_count> relative_errors(const PointFigures& fine, const PointFigures& coarse) {
     const auto error = nested_errors({fine, coarse});
-    double worst = 0;
+    std::array<double, point_figure_count> relative{};
     for (std::size_t k = 0; k < point_figure_count; ++k) {
         if (std::isnan(error[k])) continue;
         const auto figure = static_cast<PointFigure>(k);
@@ -95,9 +95,9 @@ double largest_relative_error(const PointFigures& fine, const PointFigures& coar
         // At equilibrium the current is zero and has no relative error.
         if (figure == PointFigure::current_density && fine[PointFigure::junction_voltage] == 0) continue;
         const double excess = error[k] - fine.floors[k];
-        if (excess > 2 * fine.floors[k] && scale > 0) worst = std::max(worst, excess / scale);
+        if (excess > 2 * fine.floors[k] && scale > 0) relative[k] = excess / scale;
     }
-    return worst;
+    return relative;
 }
 
 }  // namespace bandwright

@@ -44,8 +44,8 @@ PointFigures point_figures(const DiscreteSystem& system, const State& state, con
 /// error covers; tests judge coverage and median over 100 structures.
 std::array<double, point_figure_count> nested_errors(const std::vector<PointFigures>& finest_first);
 
-/// Largest estimated error relative to the value (lengths relative to the depletion width) of a fine mesh beside its
-/// coarsened one.
-double largest_relative_error(const PointFigures& fine, const PointFigures& coarse);
+/// Estimated errors relative to the values (depths relative to the depletion width) of a fine mesh beside its coarsened
+/// one; 0 for figures that are missing, at their floor, or have no relative error.
+std::array<double, point_figure_count> relative_errors(const PointFigures& fine, const PointFigures& coarse);
 
 }  // namespace bandwright

@@ -45,12 +45,28 @@ EndCoefficients end_coefficients(const Structure& structure, const Material& mat
     return end;
 }
 
-// Mean of the doping between two depths of one layer, three-point Gauss rule.
-double mean_net(const Structure& structure, std::size_t layer, double from, double to) {
-    const double middle = 0.5 * (from + to), reach = 0.5 * (to - from) * std::sqrt(0.6);
-    return (5 * doping_at(structure, layer, middle - reach).net() + 8 * doping_at(structure, layer, middle).net() +
-            5 * doping_at(structure, layer, middle + reach).net()) /
-           18;
+/// Net doping given to the two ends of a cell [m^-3].
+struct EndDoping {
+    double left, right;
+};
+
+// The doping of a cell's ends: the values there, both moved by the same amount so that the cell keeps its exact dose.
+//
+// The mean of a half cell instead would differ from the end value by a quarter of the change across the cell, and next to
+// a wider cell by a different amount: in a graded neutral region that shows as charge which is not there.
+EndDoping end_doping(const Structure& structure, std::size_t layer, double from, double to) {
+    const auto net = [&](double x) { return doping_at(structure, layer, x).net(); };
+    const auto mean = [&](double a, double b) {  // three-point Gauss rule
+        const double middle = 0.5 * (a + b), reach = 0.5 * (b - a) * std::sqrt(0.6);
+        return (5 * net(middle - reach) + 8 * net(middle) + 5 * net(middle + reach)) / 18;
+    };
+    const double h = to - from, middle = 0.5 * (from + to);
+    const double lower_half = mean(from, middle), upper_half = mean(middle, to);
+    const double left = net(from + 1e-9 * h), right = net(to - 1e-9 * h);
+    const double shift = 0.5 * (lower_half + upper_half) - 0.5 * (left + right);
+    // A profile that the mesh does not resolve yet: the means of the halves are the safer picture.
+    if (std::abs(shift) > 0.1 * std::max(std::abs(left), std::abs(right))) return {lower_half, upper_half};
+    return {left + shift, right + shift};
 }
 
 ContactCoefficients contact_coefficients(const DiscreteSystem& system, const Contact& contact, bool is_top) {
@@ -96,9 +112,9 @@ DiscreteSystem discretize(const Structure& structure, Mesh mesh) {
         system.material_of_cell[cell] = structure.layers[layer].material;
         const double from = system.mesh.position[cell], to = system.mesh.position[cell + 1], h = to - from;
         require(h > 0, "a cell has no width");
-        const double middle = 0.5 * (from + to);
-        system.net_left[cell] = mean_net(structure, layer, from, middle);
-        system.net_right[cell] = mean_net(structure, layer, middle, to);
+        const EndDoping ends = end_doping(structure, layer, from, to);
+        system.net_left[cell] = ends.left;
+        system.net_right[cell] = ends.right;
         system.dielectric[cell] = system.of_cell(cell).relative_permittivity * constants::vacuum_permittivity *
                                   system.thermal_voltage / (constants::elementary_charge * h);
         const MobilityModel model = mobility_model(structure, material);

@@ -10,7 +10,8 @@ std::vector<double> displacement_at_nodes(const DiscreteSystem& system, const St
     const auto middle = [&](std::size_t cell) {
         return -system.dielectric[cell] * (state.psi(cell + 1) - state.psi(cell));
     };
-    for (std::size_t node = 0; node < nodes; ++node) {
+    // Fixed nodes, where the charge may jump, and the ends: the charge of half a cell carries the value to the node.
+    for (const std::size_t node : system.mesh.fixed) {
         double sum = 0;
         int sides = 0;
         if (node > 0) {
@@ -22,6 +23,17 @@ std::vector<double> displacement_at_nodes(const DiscreteSystem& system, const St
             ++sides;
         }
         displacement[node] = sum / sides;
+    }
+    // Everywhere else the charge is smooth and the straight line between both middles errs by the change of the net charge
+    // alone; half a cell of one carrier would err by that carrier's change, which is large in a graded neutral region.
+    std::size_t next = 0;
+    for (std::size_t node = 0; node < nodes; ++node) {
+        if (next < system.mesh.fixed.size() && system.mesh.fixed[next] == node) {
+            ++next;
+            continue;
+        }
+        const double left = system.mesh.width(node - 1), right = system.mesh.width(node);
+        displacement[node] = (right * middle(node - 1) + left * middle(node)) / (left + right);
     }
     return displacement;
 }

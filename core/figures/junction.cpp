@@ -10,7 +10,8 @@ namespace bandwright {
 
 namespace {
 
-constexpr double neutral_enough = 1e-10;   // |charge| / |doping| at which a region counts as neutral
+constexpr double neutral_enough = 1e-12;  // |charge| / |doping| at which nothing but rounding is left
+constexpr double neutral_at_most = 0.05;  // |charge| / |doping| above which a place is not neutral
 constexpr double few_carriers = 0.05;      // carriers / doping below which a side counts as depleted
 
 /// What the search functions below share.
@@ -128,11 +129,10 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
         while (downwards ? node + 1 < v.system.nodes() : node > 0) {
             node = downwards ? node + 1 : node - 1;
             if ((v.displacement[node] > 0) != positive) break;
-            if (size(node) > 1.001 * least && least < 0.5 * most) break;
+            if (size(node) > 1.01 * least && least < 0.9 * most) break;  // past a minimum: another space charge
             least = std::min(least, size(node));
-            most = std::max(most, size(node));
+            if (size(node) > most) most = least = size(node);
             if (size(node) > size(best)) best = node;
-            if (most > least) least = std::min(least, size(node));
         }
     }
     double peak = v.displacement[best], depth = v.x(best);
@@ -215,34 +215,75 @@ void find_extrapolated(const View& v, const std::vector<Metallurgical>& junction
     figures.extrapolated_field = field_in_cell(v.system, cell, *value);
 }
 
-// psi [V] at the first place, outward from an edge, that counts as neutral, or where the charge is least.
+// Charge of a node's box [m^-2] over its doping: zero charge is exact neutrality of the discrete equations.
+struct BoxNeutrality {
+    double charge, doping;
+    double ratio() const { return doping != 0 ? std::abs(charge / doping) : 1; }
+};
+
+BoxNeutrality box_neutrality(const View& v, std::size_t node) {
+    BoxNeutrality box{0, 0};
+    if (node > 0) {
+        const double half = 0.5 * v.system.mesh.width(node - 1);
+        box.charge += half * charge_right(v.system, v.equations, node - 1);
+        box.doping += half * v.system.net_right[node - 1];
+    }
+    if (node < v.system.cells()) {
+        const double half = 0.5 * v.system.mesh.width(node);
+        box.charge += half * charge_left(v.system, v.equations, node);
+        box.doping += half * v.system.net_left[node];
+    }
+    return box;
+}
+
+// psi [V] between two neighbouring nodes, the cubic through both potentials with the fields as slopes.
+double psi_between(const View& v, std::size_t cell, double share) {
+    const double h = v.system.mesh.width(cell), kT = v.system.thermal_voltage;
+    return hermite(share, h, v.state.psi(cell) * kT, -field_in_cell(v.system, cell, v.displacement[cell]), v.state.psi(cell + 1) * kT,
+                   -field_in_cell(v.system, cell, v.displacement[cell + 1]));
+}
+
+// psi [V] where the charge is least in the nearest neutral region, outward from an edge: the first zero of the charge,
+// or the place of its least share of the doping.
 std::optional<double> neutral_psi_beyond(const View& v, double edge_depth, Region region, bool below) {
-    std::optional<double> psi;
-    double least = 0.05;
-    std::optional<double> last_ratio;
-    std::size_t node = below ? region.first : region.last;
-    while (below ? node <= region.last : node + 1 > region.first) {
-        const bool beyond = below ? v.x(node) >= edge_depth : v.x(node) <= edge_depth;
-        if (beyond) {
-            const bool use_left = below ? node > 0 && node > region.first : node >= v.system.cells() || node == region.last;
-            const std::size_t cell = use_left ? node - 1 : node;
-            if (cell < v.system.cells()) {
-                const double rho = use_left ? charge_right(v.system, v.equations, cell) : charge_left(v.system, v.equations, cell);
-                const double net = use_left ? v.system.net_right[cell] : v.system.net_left[cell];
-                const double ratio = net != 0 ? std::max(std::abs(rho / net), neutral_enough) : 1;
-                if (ratio < least) {
-                    least = ratio;
-                    psi = v.state.psi(node) * v.system.thermal_voltage;
-                    if (ratio <= neutral_enough) return psi;
-                } else if (psi && ratio > 10 * least && ratio > 0.01) {
-                    return psi;  // the next space charge begins
-                }
+    std::optional<std::size_t> best;
+    double least = neutral_at_most;
+    std::optional<std::size_t> before;
+    for (std::size_t step = 0; step <= region.last - region.first; ++step) {
+        const std::size_t node = below ? region.first + step : region.last - step;
+        if (below ? v.x(node) < edge_depth : v.x(node) > edge_depth) continue;
+        if (node == 0 || node + 1 == v.system.nodes() || node == region.first || node == region.last) continue;
+        const BoxNeutrality here = box_neutrality(v, node);
+        if (here.ratio() <= neutral_enough) return v.state.psi(node) * v.system.thermal_voltage;
+        if (before) {
+            const BoxNeutrality there = box_neutrality(v, *before);
+            if ((here.charge > 0) != (there.charge > 0) && here.ratio() < neutral_at_most && there.ratio() < neutral_at_most) {
+                const std::size_t cell = std::min(node, *before);
+                const double density_here = here.charge / here.doping, density_there = there.charge / there.doping;
+                const double share = density_there / (density_there - density_here);  // from `before` to here
+                return psi_between(v, cell, below ? share : 1 - share);
             }
         }
-        if (!below && node == 0) break;
-        node = below ? node + 1 : node - 1;
+        if (here.ratio() < least) {
+            least = here.ratio();
+            best = node;
+        } else if (best && here.ratio() > 10 * least && here.ratio() > 0.01) {
+            break;  // the next space charge begins
+        }
+        before = node;
     }
-    return psi;
+    if (!best) return std::nullopt;
+    // The least share between nodes: the parabola through three logarithms, so that the place does not jump with nodes.
+    const std::size_t node = *best;
+    if (node < 1 || node + 1 >= v.system.nodes()) return v.state.psi(node) * v.system.thermal_voltage;
+    const double x0 = v.x(node - 1) - v.x(node), x2 = v.x(node + 1) - v.x(node);
+    const double y1 = std::log(box_neutrality(v, node).ratio());
+    const double y0 = std::log(box_neutrality(v, node - 1).ratio()) - y1, y2 = std::log(box_neutrality(v, node + 1).ratio()) - y1;
+    const double curvature = (y2 / x2 - y0 / x0) / (x2 - x0), slope = y0 / x0 - curvature * x0;
+    double offset = curvature > 0 ? -slope / (2 * curvature) : 0;
+    offset = std::clamp(offset, 0.5 * x0, 0.5 * x2);
+    if (offset < 0) return psi_between(v, node - 1, 1 - offset / x0);
+    return psi_between(v, node, offset / x2);
 }
 
 }  // namespace
