@@ -82,7 +82,10 @@ std::optional<std::pair<std::size_t, double>> electrical_junction(const View& v,
 // Half-depletion point on one side of the electrical junction.
 std::optional<double> edge(const View& v, std::size_t start_cell, double start, bool downwards, bool n_side) {
     const double sign = n_side ? 1 : -1;
-    std::optional<double> before;  // value of ln(2 c / |N|) at the last place seen on this side
+    // Next to the metallurgical junction the doping vanishes and the share of carriers is large without meaning: only a
+    // crossing from below counts.
+    bool seen_below = false;
+    std::optional<double> start_of_side;  // where this side's doping begins
     const auto excess = [&](std::size_t cell, double position) -> std::optional<double> {
         const double net = sign * v.net_at(cell, position);
         if (!(net > 0)) return std::nullopt;
@@ -96,24 +99,18 @@ std::optional<double> edge(const View& v, std::size_t start_cell, double start, 
         const double far = downwards ? bottom : top;
         if (cell == start_cell) near = std::clamp(start, top, bottom);
         const std::optional<double> a = excess(cell, near), b = excess(cell, far);
-        if (a && before && *before < 0 && *a >= 0) return near;  // crossed at the jump between two cells
-        if (a && b && *a < 0 && *b >= 0)
+        if (a && !start_of_side) start_of_side = near;
+        if (b && !start_of_side) start_of_side = far;
+        if (seen_below && a && *a >= 0) return near;  // crossed at the jump between two cells
+        seen_below = seen_below || (a && *a < 0);
+        if (seen_below && a && b && *a < 0 && *b >= 0)
             return crossing(std::min(near, far), std::max(near, far), [&](double position) {
                 const std::optional<double> value = excess(cell, position);
                 return value ? *value : -1.0;
             });
-        if (!a && b && *b >= 0) {
-            // The net doping turns to this side's sign inside the cell: the crossing lies after that point.
-            double from = near, to = far;
-            for (int step = 0; step < 60; ++step) {
-                const double middle = 0.5 * (from + to);
-                const std::optional<double> value = excess(cell, middle);
-                (value && *value >= 0 ? to : from) = middle;
-            }
-            return to;
-        }
-        before = b ? b : (before ? before : std::optional<double>(-1.0));
-        if (downwards ? cell + 1 >= v.system.cells() : cell == 0) return std::nullopt;
+        seen_below = seen_below || (b && *b < 0);
+        // A side that is nowhere half depleted (carriers spill from it into an intrinsic layer) begins at its edge.
+        if (downwards ? cell + 1 >= v.system.cells() : cell == 0) return seen_below ? std::nullopt : start_of_side;
         cell = downwards ? cell + 1 : cell - 1;
     }
 }

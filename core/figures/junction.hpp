@@ -15,7 +15,8 @@ namespace bandwright {
 /// What one junction looks like in one state. A missing number has its reason in `state`.
 struct JunctionFigures {
     /// Half-depletion points: outward from n = p, the first upward crossing of majority density / net doping
-    /// through one half [m]. None where the layer is depleted through.
+    /// through one half [m]; where a side is nowhere half depleted, the place where its doping begins. None where the
+    /// layer is depleted through.
     std::optional<double> top_edge, bottom_edge;
     /// Largest field of the junction, signed [V/m], at a node or, where the field is smooth, at the summit between two.
     std::optional<double> peak_field, peak_depth;
