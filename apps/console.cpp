@@ -51,14 +51,10 @@ void ProgressBar::clear() {
 std::string value_with_error(double value, double error, int digits) {
     if (std::isnan(value)) return "-";
     if (!(error > 0)) return fmt::format("{:.{}g}", value, digits);
-    // Decimals down to the second digit of the error, all in the power of ten of the value.
-    const double size = std::max(std::abs(value), error);
-    int power = static_cast<int>(std::floor(std::log10(size)));
-    if (power >= -3 && power <= 4) power = 0;
-    const double scale = std::pow(10.0, power);
-    const int decimals = std::clamp(1 - static_cast<int>(std::floor(std::log10(error / scale))), 0, 12);
-    const std::string body = fmt::format("{:.{}f} \u00b1 {:.{}f}", value / scale, decimals, error / scale, decimals);
-    return power == 0 ? body : fmt::format("({})e{:+03d}", body, power);
+    // Digits down to the second one of the error, but no more than a person compares.
+    const double ratio = std::abs(value) / error;
+    const int meaningful = ratio > 1 ? static_cast<int>(std::floor(std::log10(ratio))) + 3 : 2;
+    return fmt::format("{:.{}g} \u00b1 {:.1e}", value, std::clamp(meaningful, 2, digits), error);
 }
 
 namespace {

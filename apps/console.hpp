@@ -28,9 +28,8 @@ class ProgressBar {
     std::string last_;
 };
 
-/// A value with its error, rounded so that the error keeps two digits: "-5.78e-07 +- 2e-10" style is avoided in favour of
-/// one power of ten: "(-5.7752 +- 0.0002)e-07". Without an error, `digits` significant digits.
-std::string value_with_error(double value, double error, int digits = 5);
+/// A value with its error: digits down to the second one of the error, at most `digits`: "-5.775e-07 +- 2.1e-10".
+std::string value_with_error(double value, double error, int digits = 7);
 
 /// Text columns, right-aligned unless `left` names them; headings and units above.
 struct TextTable {

@@ -76,7 +76,7 @@ void print_points(const Table& points) {
         table.rows.resize(points.rows());
         for (std::size_t row = 0; row < points.rows(); ++row)
             table.rows[row].push_back(
-                value_with_error(shown(column->values[row], column->unit), column->errors.empty() ? 0 : shown(column->errors[row], column->unit), 6));
+                value_with_error(shown(column->values[row], column->unit), column->errors.empty() ? 0 : shown(column->errors[row], column->unit)));
     }
     fmt::print("{}", table.text());
 }
