@@ -12,7 +12,7 @@ namespace bandwright {
 
 struct NewtonSolver::Work {
     const DiscreteSystem* system = nullptr;
-    Equations equations;
+    Equations equations, scratch;
     detail::KinsolSession kinsol;
     std::vector<double> step, by_voltage;
     TerminalCurrent current;
@@ -36,6 +36,60 @@ double log_change(double relative_change) {
 
 double capped(double change, double cap) {
     return std::abs(change) <= cap ? change : std::copysign(cap * (1 + std::log(std::abs(change) / cap)), change);
+}
+
+// A floating region's quasi-Fermi level hangs on a leakage current many decades below the majority flux; its rounding
+// floor is then far above 1e-9. The step is at that floor when it has stopped shrinking for good while every residual is
+// as small as rounding lets it be.
+bool stalled_at_rounding(const NewtonReport& report) {
+    constexpr std::size_t span = 4;
+    if (report.steps.size() < span + 2 || report.residual > 1e-11) return false;
+    const auto from = report.steps.end() - span;
+    const double most = *std::max_element(from, report.steps.end()), least = *std::min_element(from, report.steps.end());
+    return most <= 1e-4 && least > 0.1 * most;
+}
+
+// Turns the matrix of a full system into that of Poisson's equation alone: the carriers' rows ask for no change.
+void hold_carriers(Equations& equations) {
+    BlockTridiagonal& matrix = equations.jacobian;
+    for (std::size_t r = 1; r < 3; ++r) {
+        for (std::size_t k = 0; k < 3; ++k) {
+            for (Block& block : matrix.left) block[3 * r + k] = 0;
+            for (Block& block : matrix.right) block[3 * r + k] = 0;
+            for (Block& block : matrix.shunt) block[3 * r + k] = r == k ? 1 : 0;
+        }
+        for (std::size_t node = 0; node < matrix.blocks(); ++node) equations.balance[3 * node + r] = 0;
+    }
+}
+
+// Slope of the (convex) energy of Poisson's equation along a change of psi, in units of the sum of its terms.
+double energy_slope(const DiscreteSystem& system, const State& state, std::span<const double> change, double share,
+                    Equations& scratch) {
+    State trial = state;
+    for (std::size_t node = 0; node < state.nodes(); ++node) trial.unknowns[3 * node] += share * change[3 * node];
+    evaluate(system, trial, scratch);
+    double slope = 0;
+    for (std::size_t node = 1; node + 1 < system.nodes(); ++node) {
+        const double residual = system.dielectric[node - 1] * (trial.psi(node - 1) - trial.psi(node)) +
+                                system.dielectric[node] * (trial.psi(node + 1) - trial.psi(node)) +
+                                0.5 * system.mesh.width(node - 1) * (scratch.right[node - 1].p - scratch.right[node - 1].n + system.net_right[node - 1]) +
+                                0.5 * system.mesh.width(node) * (scratch.left[node].p - scratch.left[node].n + system.net_left[node]);
+        slope -= residual * change[3 * node];
+    }
+    return slope;
+}
+
+// Share of a Newton step at which the energy has stopped falling, 1 where the whole step is good.
+double energy_share(const DiscreteSystem& system, const State& state, std::span<const double> change, Equations& scratch) {
+    const double at_start = energy_slope(system, state, change, 0, scratch);
+    if (!(at_start < 0)) return 1;  // at the rounding floor
+    double share = 1;
+    for (int cut = 0; cut < 60; ++cut) {
+        const double slope = energy_slope(system, state, change, share, scratch);
+        if (slope <= 0.5 * std::abs(at_start)) return share;
+        share *= slope > 1e3 * std::abs(at_start) ? 0.25 : 0.5;
+    }
+    return share;
 }
 
 // Series resistance [ohm m^2] times flux [m^-2 s^-1] as a voltage in kT/q.
@@ -71,9 +125,9 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
             report.status = NewtonStatus::converged;
             report.iteration_error = before < INFINITY ? next : last;
             done = true;
-        } else if (last <= 1e-6 && last > 0.3 * before && report.residual <= 1e-6) {
+        } else if ((last <= 1e-6 && last > 0.3 * before && report.residual <= 1e-6) || stalled_at_rounding(report)) {
             report.status = NewtonStatus::converged_at_rounding;
-            report.iteration_error = last;
+            report.iteration_error = std::max(last, before < INFINITY && report.residual <= 1e-11 ? before : last);
             done = true;
         }
     };
@@ -82,7 +136,8 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
         trial.contact_voltage = u.back();
         if (!assemble(system, trial, work.equations)) return detail::Trial::not_finite;
         report.residual = 0;
-        for (const double value : work.equations.residual) report.residual = std::max(report.residual, std::abs(value));
+        for (std::size_t k = 0; k < size; ++k)
+            if (!options.equilibrium || k % 3 == 0) report.residual = std::max(report.residual, std::abs(work.equations.residual[k]));
         double border = 0;
         if (bordered) {
             work.current = terminal_current(system, trial, work.equations);
@@ -100,12 +155,13 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
     };
     const auto step = [&](std::span<double> x) {
         ++report.iterations;
+        if (options.equilibrium) hold_carriers(work.equations);
         if (work.equations.jacobian.factorize() != system.nodes()) {
             report.status = NewtonStatus::singular;
             return false;
         }
         std::vector<double>& d = work.step;
-        for (std::size_t k = 0; k < size; ++k) d[k] = -work.equations.residual[k];
+        for (std::size_t k = 0; k < size; ++k) d[k] = -work.equations.balance[k];
         work.equations.jacobian.solve(d);
         double change_of_contact = 0;
         if (bordered) {
@@ -118,11 +174,22 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
             change_of_contact = (applied_voltage - trial.contact_voltage - drop * (work.current.flux + along)) / (1 + drop * slope);
             for (std::size_t k = 0; k < size; ++k) d[k] += change_of_contact * z[k];
         }
+        const double share = options.equilibrium ? energy_share(system, trial, d, work.scratch) : 1;
         double worst = 0;
         for (std::size_t node = 0; node < system.nodes(); ++node) {
             const double psi = d[3 * node], rn = psi - d[3 * node + 1], rp = d[3 * node + 2] - psi;
             const double sizes[3] = {std::abs(psi), std::abs(rn), std::abs(rp)};
-            const double moved = capped(psi, options.cap);
+            const double moved = options.equilibrium ? share * psi : capped(psi, options.cap);
+            if (options.equilibrium) {
+                x[3 * node] = moved;
+                x[3 * node + 1] = x[3 * node + 2] = 0;
+                if (std::abs(psi) > worst) {
+                    worst = std::abs(psi);
+                    report.worst_node = node;
+                    report.worst_unknown = 0;
+                }
+                continue;
+            }
             x[3 * node] = moved;
             x[3 * node + 1] = moved - log_change(rn);
             x[3 * node + 2] = moved + log_change(rp);
@@ -134,13 +201,19 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
                 }
         }
         // Contacts take their values at once.
+        if (options.equilibrium) {
+            x[0] = d[0];
+            x[size - 3] = d[size - 3];
+        }
         const auto set_contact = [&](std::size_t node, const ContactCoefficients& contact) {
             x[3 * node] = d[3 * node];
             if (!contact.electron_velocity) x[3 * node + 1] = d[3 * node + 1];
             if (!contact.hole_velocity) x[3 * node + 2] = d[3 * node + 2];
         };
-        set_contact(0, system.top);
-        set_contact(system.nodes() - 1, system.bottom);
+        if (!options.equilibrium) {
+            set_contact(0, system.top);
+            set_contact(system.nodes() - 1, system.bottom);
+        }
         x[size] = change_of_contact;
         report.steps.push_back(worst);
         return std::isfinite(worst);

@@ -49,6 +49,9 @@ struct NewtonOptions {
     double cap = 10;
     /// Converged when the step that would come next is predicted below this.
     double tolerance = 1e-10;
+    /// Solve Poisson's equation with both quasi-Fermi potentials held at zero: equilibrium. The step is shortened until
+    /// the energy of the convex problem no longer falls along it, so this converges from any guess.
+    bool equilibrium = false;
 };
 
 /// Solves one system again and again: keeps its workspace and last factorisation.

@@ -41,9 +41,13 @@ bool BiasWalk::start_from(State guess, double applied_voltage) {
     guess.contact_voltage = solver_.system().series_resistance > 0 ? guess.contact_voltage : applied_voltage;
     NewtonOptions options;
     options.most_iterations = 100;
+    if (applied_voltage == 0) {
+        options.equilibrium = true;
+        for (std::size_t node = 0; node < guess.nodes(); ++node) guess.unknowns[3 * node + 1] = guess.unknowns[3 * node + 2] = 0;
+    }
     report_ = solver_.solve(guess, applied_voltage, options);
     iterations_ += report_.iterations;
-    fresh_ = true;
+    fresh_ = applied_voltage != 0;  // the equilibrium solve leaves Poisson's matrix alone in the workspace
     if (!report_.converged()) {
         message_ = describe_failure(solver_.system(), applied_voltage, report_);
         return false;

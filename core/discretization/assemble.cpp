@@ -56,9 +56,9 @@ CellFluxes fluxes(const DiscreteSystem& system, const State& state, std::size_t 
 }
 
 void resize(Equations& equations, std::size_t nodes) {
-    if (equations.row_scale.size() == 3 * nodes) return;
+    if (equations.balance.size() == 3 * nodes) return;
     equations.residual.assign(3 * nodes, 0);
-    equations.row_scale.assign(3 * nodes, 1);
+    equations.balance.assign(3 * nodes, 0);
     equations.left.resize(nodes - 1);
     equations.right.resize(nodes - 1);
     equations.rate_left.resize(nodes - 1);
@@ -96,78 +96,51 @@ bool assemble(const DiscreteSystem& system, const State& state, Equations& equat
     const std::size_t nodes = system.nodes();
     BlockTridiagonal& matrix = equations.jacobian;
     if (matrix.blocks() != nodes) matrix.resize(nodes);
+    for (std::size_t cell = 0; cell < system.cells(); ++cell) {
+        const double c = system.dielectric[cell];
+        const auto& n = equations.flux[cell].electron_by;
+        const auto& p = equations.flux[cell].hole_by;
+        matrix.left[cell] = {-c, 0, 0, n[0], n[1], 0, p[0], 0, p[1]};
+        matrix.right[cell] = {c, 0, 0, n[2], n[3], 0, p[2], 0, p[3]};
+    }
     bool finite = true;
     for (std::size_t node = 0; node < nodes; ++node) {
-        Block& d = matrix.diagonal[node];
-        Block& lower = matrix.lower[node];
-        Block& upper = matrix.upper[node];
-        d.fill(0);
-        lower.fill(0);
-        upper.fill(0);
-        double poisson = 0, electrons = 0, holes = 0;
+        Block& shunt = matrix.shunt[node];
+        shunt.fill(0);
+        double balance[3] = {0, 0, 0};
+        const auto add_half = [&](double half, const EndState& s, const HalfRate& rate, double net) {
+            balance[0] += half * (s.p - s.n + net);
+            balance[1] -= half * rate.value;
+            balance[2] += half * rate.value;
+            shunt[0] -= half * (s.p * s.ratio_p + s.n * s.ratio_n);
+            shunt[1] += half * s.n * s.ratio_n;
+            shunt[2] += half * s.p * s.ratio_p;
+            const double by[3] = {half * rate.by_psi, half * rate.by_phi_n, half * rate.by_phi_p};
+            for (std::size_t k = 0; k < 3; ++k) {
+                shunt[3 + k] -= by[k];
+                shunt[6 + k] += by[k];
+            }
+        };
         if (node > 0) {
             const std::size_t cell = node - 1;
-            const double c = system.dielectric[cell], half = 0.5 * system.mesh.width(cell);
-            const EndState& s = equations.right[cell];
-            const HalfRate& rate = equations.rate_right[cell];
-            const CellFluxes& f = equations.flux[cell];
-            poisson += c * (state.psi(node - 1) - state.psi(node)) + half * (s.p - s.n + system.net_right[cell]);
-            d[0] -= c + half * (s.p * s.ratio_p + s.n * s.ratio_n);
-            d[1] += half * s.n * s.ratio_n;
-            d[2] += half * s.p * s.ratio_p;
-            lower[0] = c;
-            electrons -= f.electron + half * rate.value;
-            holes -= f.hole - half * rate.value;
-            lower[3] = -f.electron_by[0];
-            lower[4] = -f.electron_by[1];
-            lower[6] = -f.hole_by[0];
-            lower[8] = -f.hole_by[1];
-            d[3] -= f.electron_by[2] + half * rate.by_psi;
-            d[4] -= f.electron_by[3] + half * rate.by_phi_n;
-            d[5] -= half * rate.by_phi_p;
-            d[6] -= f.hole_by[2] - half * rate.by_psi;
-            d[7] += half * rate.by_phi_n;
-            d[8] -= f.hole_by[3] - half * rate.by_phi_p;
+            add_half(0.5 * system.mesh.width(cell), equations.right[cell], equations.rate_right[cell], system.net_right[cell]);
+            balance[0] -= system.dielectric[cell] * (state.psi(node) - state.psi(node - 1));
+            balance[1] -= equations.flux[cell].electron;
+            balance[2] -= equations.flux[cell].hole;
         }
         if (node + 1 < nodes) {
-            const std::size_t cell = node;
-            const double c = system.dielectric[cell], half = 0.5 * system.mesh.width(cell);
-            const EndState& s = equations.left[cell];
-            const HalfRate& rate = equations.rate_left[cell];
-            const CellFluxes& f = equations.flux[cell];
-            poisson += c * (state.psi(node + 1) - state.psi(node)) + half * (s.p - s.n + system.net_left[cell]);
-            d[0] -= c + half * (s.p * s.ratio_p + s.n * s.ratio_n);
-            d[1] += half * s.n * s.ratio_n;
-            d[2] += half * s.p * s.ratio_p;
-            upper[0] = c;
-            electrons += f.electron - half * rate.value;
-            holes += f.hole + half * rate.value;
-            upper[3] = f.electron_by[2];
-            upper[4] = f.electron_by[3];
-            upper[6] = f.hole_by[2];
-            upper[8] = f.hole_by[3];
-            d[3] += f.electron_by[0] - half * rate.by_psi;
-            d[4] += f.electron_by[1] - half * rate.by_phi_n;
-            d[5] -= half * rate.by_phi_p;
-            d[6] += f.hole_by[0] + half * rate.by_psi;
-            d[7] += half * rate.by_phi_n;
-            d[8] += f.hole_by[1] + half * rate.by_phi_p;
+            add_half(0.5 * system.mesh.width(node), equations.left[node], equations.rate_left[node], system.net_left[node]);
+            balance[0] += system.dielectric[node] * (state.psi(node + 1) - state.psi(node));
+            balance[1] += equations.flux[node].electron;
+            balance[2] += equations.flux[node].hole;
         }
-        double row[3] = {poisson, electrons, holes};
-        if (node == 0) equations.by_contact_voltage = {0, 0, 0};
-        if (node == 0) apply_contact(system.top, state, 0, true, equations, row);
-        if (node + 1 == nodes) apply_contact(system.bottom, state, node, false, equations, row);
-        for (int r = 0; r < 3; ++r) {
-            const double scale = 1 / d[4 * r];
-            equations.row_scale[3 * node + r] = d[4 * r];
-            for (int k = 0; k < 3; ++k) {
-                d[3 * r + k] *= scale;
-                lower[3 * r + k] *= scale;
-                upper[3 * r + k] *= scale;
-            }
-            if (node == 0) equations.by_contact_voltage[r] *= scale;
-            equations.residual[3 * node + r] = row[r] * scale;
-            finite = finite && std::isfinite(equations.residual[3 * node + r]) && std::isfinite(scale);
+        if (node == 0) apply_contact(system.top, state, 0, true, equations, balance);
+        if (node + 1 == nodes) apply_contact(system.bottom, state, node, false, equations, balance);
+        const Block diagonal = matrix.diagonal_block(node);
+        for (std::size_t r = 0; r < 3; ++r) {
+            equations.balance[3 * node + r] = balance[r];
+            equations.residual[3 * node + r] = balance[r] / diagonal[4 * r];
+            finite = finite && std::isfinite(equations.residual[3 * node + r]);
         }
     }
     return finite;

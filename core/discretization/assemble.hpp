@@ -34,11 +34,11 @@ struct Equations {
     /// Rows: Poisson, electrons, holes of node 0, then node 1, ...; each divided by its diagonal, so that an entry is a
     /// correction in kT/q. Size 3 nodes.
     std::vector<double> residual;
-    /// The diagonal that each row was divided by, size 3 nodes.
-    std::vector<double> row_scale;
-    /// Derivative of `residual` (contact voltage held fixed).
+    /// The same before division: what is left of each balance (Poisson [m^-2], carriers [m^-2 s^-1]), size 3 nodes.
+    std::vector<double> balance;
+    /// Derivative of `balance` (contact voltage held fixed).
     BlockTridiagonal jacobian;
-    /// Derivative of `residual` with respect to the contact voltage: rows of node 0 only.
+    /// Derivative of `balance` with respect to the contact voltage: rows of node 0 only.
     std::array<double, 3> by_contact_voltage{};
     std::vector<EndState> left, right;          // per cell
     std::vector<HalfRate> rate_left, rate_right;  // per cell

@@ -2,6 +2,7 @@
 // SPDX-License-Identifier: MIT
 #pragma once
 
+#include <array>
 #include <cmath>
 
 #include "core/discretization/assemble.hpp"
@@ -14,27 +15,31 @@ namespace bandwright {
 /// with surface velocity S keeps its box equation, closed by the flux into the metal S (c - c_0), c_0 the equilibrium
 /// density: J_n . outward = -q S (n - n_0), J_p . outward = +q S (p - p_0), written with expm1 so that the excess does
 /// not cancel. Source: [SzeNg2007] (surface recombination velocity).
-/// row: the three residuals before scaling, changed in place.
+/// balance: the three balances of the node, changed in place.
 inline void apply_contact(const ContactCoefficients& contact, const State& state, std::size_t node, bool is_top,
-                          Equations& equations, double (&row)[3]) {
-    Block& d = equations.jacobian.diagonal[node];
-    Block& off = is_top ? equations.jacobian.upper[node] : equations.jacobian.lower[node];
+                          Equations& equations, double (&balance)[3]) {
+    BlockTridiagonal& matrix = equations.jacobian;
+    Block& shunt = matrix.shunt[node];
+    std::array<bool, 3>& is_set = is_top ? matrix.first_is_set : matrix.last_is_set;
     const double voltage = is_top ? state.contact_voltage : 0;
-    const auto set = [&](int r, double value, double target) {
-        for (int k = 0; k < 3; ++k) d[3 * r + k] = off[3 * r + k] = 0;
-        d[4 * r] = 1;
-        row[r] = value - target;
-        if (is_top) equations.by_contact_voltage[r] = -1;
+    const auto by_voltage = [&](std::size_t row, double value) {
+        if (is_top) equations.by_contact_voltage[row] = value;
     };
+    const auto set = [&](std::size_t row, double value, double target) {
+        is_set[row] = true;
+        balance[row] = value - target;
+        by_voltage(row, -1);
+    };
+    is_set = {false, false, false};
     set(0, state.psi(node), voltage + contact.neutral_psi);
     if (contact.electron_velocity) {
         // Density relative to equilibrium, with psi already at its contact value: only phi_n moves it.
         const double n0 = std::exp(std::fmax(contact.log_n, -600.0));
         const double excess = n0 * std::expm1(std::fmin(voltage - state.phi_n(node), 600.0));
         const double speed = *contact.electron_velocity;
-        row[1] -= speed * excess;
-        d[4] += speed * (n0 + excess);
-        if (is_top) equations.by_contact_voltage[1] = -speed * (n0 + excess);
+        balance[1] -= speed * excess;
+        shunt[4] += speed * (n0 + excess);
+        by_voltage(1, -speed * (n0 + excess));
     } else {
         set(1, state.phi_n(node), voltage);
     }
@@ -42,9 +47,9 @@ inline void apply_contact(const ContactCoefficients& contact, const State& state
         const double p0 = std::exp(std::fmax(contact.log_p, -600.0));
         const double excess = p0 * std::expm1(std::fmin(state.phi_p(node) - voltage, 600.0));
         const double speed = *contact.hole_velocity;
-        row[2] += speed * excess;
-        d[8] += speed * (p0 + excess);
-        if (is_top) equations.by_contact_voltage[2] = -speed * (p0 + excess);
+        balance[2] += speed * excess;
+        shunt[8] += speed * (p0 + excess);
+        by_voltage(2, -speed * (p0 + excess));
     } else {
         set(2, state.phi_p(node), voltage);
     }

@@ -74,9 +74,9 @@ ContactCoefficients contact_coefficients(const DiscreteSystem& system, const Con
     const std::size_t cell = is_top ? 0 : system.cells() - 1;
     const EndCoefficients& end = system.of_cell(cell);
     const Material& material = structure.materials[structure.layers[system.mesh.layer_of_cell[cell]].material];
-    // The doping at the contact itself (a half cell's mean would be first order), from just inside the layer.
-    const double inside = 1e-9 * system.mesh.width(cell);
-    const double x = is_top ? system.mesh.position.front() + inside : system.mesh.position.back() - inside;
+    // The doping at the contact itself (a half cell's mean would be first order); the bottom end belongs to the last layer.
+    const double bottom = system.mesh.position.back();
+    const double x = is_top ? system.mesh.position.front() : std::nextafter(bottom, 0.0);
     const double net = doping_at(structure, system.mesh.layer_of_cell[cell], x).net();
     const double psi = neutral_potential(bands_at(material, structure.temperature), structure.models.statistics,
                                          structure.temperature, net) /

@@ -49,20 +49,13 @@ State random_state(const DiscreteSystem& system, unsigned seed) {
     return state;
 }
 
-// Largest disagreement between the analytic and the difference derivative, relative to the row's largest entry.
-// Rows are divided by their diagonal, which depends on the state: the unscaled product rule is avoided by comparing
-// scale * (row derivative), with the scale of the undisturbed state.
+// Largest disagreement between the analytic and the difference derivative of the balances, relative to the row's largest
+// entry.
 double worst_disagreement(const DiscreteSystem& system, const State& state, std::string& place, double spoil = 0) {
-    Equations at;
+    Equations at, plus, minus;
     EXPECT_TRUE(assemble(system, state, at));
     BlockTridiagonal matrix = at.jacobian;
-    if (spoil != 0) matrix.upper[4][4] += spoil;
-    // The residual before scaling: recovered with the diagonal that assemble() divides by, read from two states.
-    const auto unscaled = [&](const State& s) {
-        Equations e;
-        assemble(system, s, e);
-        return e;
-    };
+    if (spoil != 0) matrix.right[4][4] *= 1 + spoil;
     double worst = 0;
     const char* names[] = {"psi", "phi_n", "phi_p"};
     for (std::size_t node = 0; node < system.nodes(); ++node)
@@ -71,21 +64,18 @@ double worst_disagreement(const DiscreteSystem& system, const State& state, std:
             State up = state, down = state;
             up.unknowns[3 * node + k] += h;
             down.unknowns[3 * node + k] -= h;
-            const Equations plus = unscaled(up), minus = unscaled(down);
+            assemble(system, up, plus);
+            assemble(system, down, minus);
             for (std::size_t row_node = node > 0 ? node - 1 : 0; row_node <= std::min(node + 1, system.nodes() - 1); ++row_node)
                 for (std::size_t r = 0; r < 3; ++r) {
                     const std::size_t row = 3 * row_node + r;
-                    // d(F/D) = dF/D - F dD/D^2: with F/D = residual and D known up to a factor through row_scale.
-                    const double difference =
-                        (plus.residual[row] * plus.row_scale[row] - minus.residual[row] * minus.row_scale[row]) / (2 * h) / at.row_scale[row];
-                    const Block& block = row_node == node ? matrix.diagonal[row_node]
-                                         : row_node < node ? matrix.upper[row_node]
-                                                           : matrix.lower[row_node];
-                    const double analytic = block[3 * r + k];
-                    double largest = 1;
-                    for (const Block* b : {&matrix.diagonal[row_node], &matrix.upper[row_node], &matrix.lower[row_node]})
+                    const double difference = (plus.balance[row] - minus.balance[row]) / (2 * h);
+                    const Block lower = matrix.lower_block(row_node), diagonal = matrix.diagonal_block(row_node), upper = matrix.upper_block(row_node);
+                    const Block& block = row_node == node ? diagonal : row_node < node ? upper : lower;
+                    double largest = 0;
+                    for (const Block* b : {&lower, &diagonal, &upper})
                         for (std::size_t j = 0; j < 3; ++j) largest = std::max(largest, std::abs((*b)[3 * r + j]));
-                    const double error = std::abs(difference - analytic) / largest;
+                    const double error = std::abs(difference - block[3 * r + k]) / largest;
                     if (error > worst) {
                         worst = error;
                         place = std::string("row ") + names[r] + " of node " + std::to_string(row_node) + ", column " + names[k] +
