@@ -132,9 +132,10 @@ std::vector<double> largest_widths(const DiscreteSystem& system, const SeenDensi
     std::vector<double> widths(cells, INFINITY);
     for (std::size_t cell = 0; cell < cells; ++cell) {
         const double h = system.mesh.width(cell);
-        const double density = std::max(seen.most[cell], std::abs(0.5 * (system.net_left[cell] + system.net_right[cell])));
-        const double debye = std::sqrt(system.dielectric[cell] * h / std::max(density, 1e10));
-        if (seen.least[cell] < 0.9 * seen.most[cell]) {
+        const double doping = std::abs(0.5 * (system.net_left[cell] + system.net_right[cell]));
+        const double debye = std::sqrt(system.dielectric[cell] * h / std::max(doping, 1e10));
+        // Depleted in one state, filled in another: an edge sweeps through here.
+        if (seen.least[cell] < 0.5 * doping && seen.most[cell] > 0.5 * doping) {
             // Edge of a layer of charge q N W; see the derivation in DEVELOPERS.md.
             constexpr double least_layer = 30;  // in Debye lengths
             double distance = INFINITY;

@@ -91,7 +91,8 @@ std::array<double, point_figure_count> relative_errors(const PointFigures& fine,
         const bool is_depth = figure == PointFigure::peak_field_depth || figure == PointFigure::depletion_top_edge ||
                               figure == PointFigure::depletion_bottom_edge;
         if (is_depth) scale = std::isnan(fine[PointFigure::depletion_width]) ? INFINITY : fine[PointFigure::depletion_width];
-        if (figure == PointFigure::junction_voltage) continue;
+        // The place of a flat peak is known to the root of the field's error only; its error bar says so.
+        if (figure == PointFigure::junction_voltage || figure == PointFigure::peak_field_depth) continue;
         // At equilibrium the current is zero and has no relative error.
         if (figure == PointFigure::current_density && fine[PointFigure::junction_voltage] == 0) continue;
         const double excess = error[k] - fine.floors[k];

@@ -29,115 +29,142 @@ std::string place(std::string_view text, std::size_t offset) {
     return fmt::format("line {}, column {}", line, column);
 }
 
-/// What stands before an offset, blanks and comments left out.
-struct Before {
-    char last = '\0';
-    std::size_t offset = 0;
-    /// Inside an object: the last thing is a string that no colon followed yet.
-    bool is_key = false;
-    bool open_comment = false;
+/// A token of the text, cut without asking whether JSON allows it.
+struct Token {
+    enum class Kind { mark, string, word, open_comment, end };
+    Kind kind = Kind::end;
+    std::size_t begin = 0, end = 0;
+    std::string_view text;
+    bool is(std::string_view other) const { return text == other; }
 };
 
-Before look_back(std::string_view text, std::size_t end) {
-    Before before;
-    char previous = '\0';
-    for (std::size_t at = 0; at < end;) {
+Token next_token(std::string_view text, std::size_t at) {
+    constexpr std::string_view marks = "{}[],:", ends_of_words = " \t\r\n{}[],:\"/";
+    const auto token = [&](Token::Kind kind, std::size_t begin, std::size_t end) {
+        end = std::min(end, text.size());
+        return Token{kind, begin, end, text.substr(begin, end - begin)};
+    };
+    while (at < text.size()) {
         if (is_blank(text[at])) {
             ++at;
         } else if (text.substr(at, 2) == "//") {
-            while (at < end && text[at] != '\n') ++at;
+            at = std::min(text.find('\n', at), text.size());
         } else if (text.substr(at, 2) == "/*") {
             const std::size_t close = text.find("*/", at + 2);
-            if (close == std::string_view::npos || close >= end) {
-                before.open_comment = true;
-                return before;
-            }
+            if (close == std::string_view::npos) return token(Token::Kind::open_comment, at, text.size());
             at = close + 2;
+        } else if (marks.find(text[at]) != std::string_view::npos) {
+            return token(Token::Kind::mark, at, at + 1);
+        } else if (text[at] == '"') {
+            std::size_t end = at + 1;
+            while (end < text.size() && text[end] != '"') end += text[end] == '\\' ? 2 : 1;
+            return token(Token::Kind::string, at, end + 1);
         } else {
-            previous = before.last;
-            before.last = text[at];
-            before.offset = at;
-            before.is_key = text[at] == '"' && (previous == '{' || previous == ',');
-            if (text[at] == '"') {
-                ++at;
-                while (at < end && text[at] != '"') at += text[at] == '\\' ? 2 : 1;
-            }
-            ++at;
+            return token(Token::Kind::word, at,
+                         std::max(at + 1, std::min(text.find_first_of(ends_of_words, at), text.size())));
         }
     }
-    return before;
+    // A text that ends with blanks ends, for people, after its last sign.
+    std::size_t content = text.size();
+    while (content > 0 && is_blank(text[content - 1])) --content;
+    return {Token::Kind::end, content, text.size(), {}};
 }
 
-std::size_t token_start(std::string_view text, std::size_t position, const std::string& token) {
-    position = std::min(position, text.size());
-    if (!token.empty() && token.size() <= position &&
-        text.substr(position - token.size(), token.size()) == token)
-        return position - token.size();
-    return position == 0 ? 0 : position - 1;
+/// The token at which the parser gave up, and the two before it.
+struct Fault {
+    Token found, previous, before_previous;
+    bool previous_is_key() const {
+        return previous.kind == Token::Kind::string && (before_previous.is("{") || before_previous.is(","));
+    }
+};
+
+Fault fault_at(std::string_view text, std::size_t position, std::string_view reason) {
+    const std::string_view mark = "\xef\xbb\xbf";
+    Fault fault;
+    fault.found.end = text.starts_with(mark) ? mark.size() : 0;
+    const bool is_word = reason.find("invalid literal") != std::string_view::npos ||
+                         reason.find("invalid number") != std::string_view::npos;
+    for (;;) {
+        const Token token = next_token(text, fault.found.end);
+        // A word or number that breaks off is noticed one sign behind its end.
+        const bool breaks_off =
+            is_word && fault.found.kind == Token::Kind::word && fault.found.end + 1 >= position;
+        if (breaks_off) return fault;
+        fault = {token, fault.found, fault.previous};
+        if (token.end >= position || token.kind == Token::Kind::end ||
+            token.kind == Token::Kind::open_comment)
+            return fault;
+    }
+}
+
+bool has(std::string_view reason, std::string_view words) {
+    return reason.find(words) != std::string_view::npos;
 }
 
 std::string describe(const OpenContainer& container) {
-    return fmt::format(
-        "the {}{}", container.is_object ? "object" : "list",
-        container.path.empty() ? std::string(" that holds everything") : " at " + container.path);
+    const std::string kind = container.is_object ? "object" : "list";
+    return container.path.empty() ? "the outermost " + kind : "the " + kind + " at " + container.path;
+}
+
+/// What is wrong with a string; empty when it is whole.
+std::string string_trouble(std::string_view reason) {
+    if (has(reason, "missing closing quote") || has(reason, "control character U+000A") ||
+        has(reason, "control character U+000D"))
+        return "the closing quotation mark of this text is missing";
+    if (has(reason, "control character")) return "this text contains a control character; remove it";
+    if (has(reason, "invalid string"))
+        return "a backslash in this text starts nothing that JSON knows; write \\\\ for a backslash";
+    return "";
+}
+
+/// What is wrong with a token that is whole, but in the wrong place.
+std::string order_trouble(const Fault& fault, const std::vector<OpenContainer>& open) {
+    const bool in_object = open.back().is_object;
+    const Token& found = fault.found;
+    const bool closes = found.is("}") || found.is("]");
+    const bool after_start = fault.previous.is("{") || fault.previous.is("[");
+    if (fault.previous.is(",") && (closes || found.is(",")))
+        return fmt::format("a {} is missing after the comma", in_object ? "key" : "value");
+    if (fault.previous.is(":") && found.kind != Token::Kind::word)
+        return "a value is missing after the colon";
+    if (in_object && fault.previous_is_key() && !found.is(":")) return "a colon is missing after the key";
+    if (closes) return fmt::format("there is a \"{}\" while {} is open", found.text, describe(open.back()));
+    if (in_object && (fault.previous.is("{") || fault.previous.is(",")))
+        return "a key in quotation marks is needed here";
+    if (found.kind == Token::Kind::word && (after_start || fault.previous.is(",") || fault.previous.is(":")))
+        return fmt::format("{} is not a JSON value; a text needs quotation marks", in_quotes(found.text));
+    if (found.is(":")) return "there is a colon where none is needed; remove it";
+    if (found.is(",")) return "there is a comma where a value is needed";
+    return "a comma is missing before this";
 }
 
 }  // namespace
 
-Complaint syntax_trouble(std::string_view text, std::size_t position, const std::string& token,
-                         std::string_view reason, const std::vector<OpenContainer>& open) {
-    const bool in_object = !open.empty() && open.back().is_object;
-    std::size_t content = text.size();
-    while (content > 0 && is_blank(text[content - 1])) --content;
-
-    std::size_t start = token_start(text, position, token);
-    const char found = start < text.size() ? text[start] : '\0';
-    if (reason.find("UTF-8") != std::string_view::npos)
+Complaint syntax_trouble(std::string_view text, std::size_t position, std::string_view reason,
+                         const std::vector<OpenContainer>& open) {
+    if (has(reason, "UTF-8"))
         return {place(text, position == 0 ? 0 : position - 1),
                 "the text is not UTF-8 here; save the file as UTF-8"};
-    if (found == '"' && token.size() > 0 && (token.size() == 1 || token.back() != '"')) {
-        if (reason.find("escape") != std::string_view::npos ||
-            reason.find("'\\u'") != std::string_view::npos ||
-            reason.find("surrogate") != std::string_view::npos ||
-            reason.find("forbidden character") != std::string_view::npos)
-            return {place(text, position == 0 ? 0 : position - 1),
-                    "the backslash starts nothing that JSON knows; write \\\\ for a backslash"};
-        return {place(text, start), "the closing quotation mark of this text is missing"};
-    }
-    const bool at_end = start >= content || position > text.size();
-    if (at_end) start = content;
-    const Before before = look_back(text, start);
-    const std::string where = place(text, start);
-    if (before.open_comment) return {where, "the comment has no end; close it with */"};
-    if (content == 0 || (at_end && before.last == '\0'))
+    const Fault fault = fault_at(text, position, reason);
+    const Token& found = fault.found;
+    const std::string where = place(text, found.begin);
+    if (found.kind == Token::Kind::open_comment) return {where, "the comment has no end; close it with */"};
+    if (found.kind == Token::Kind::string && !string_trouble(reason).empty())
+        return {where, string_trouble(reason)};
+    if (found.kind == Token::Kind::end && open.empty())
         return {where, "the file is empty; it needs an object with format and layers"};
-    if (at_end && !open.empty())
-        return {where, fmt::format("the text ends before {} is closed; a \"{}\" is missing",
+    if (found.kind == Token::Kind::end)
+        return {where, fmt::format("the text ends while {} is open; a \"{}\" is missing",
                                    describe(open.back()), open.back().is_object ? '}' : ']')};
-    if (open.empty() && before.last != '\0')
+    if (open.empty() && fault.previous.kind != Token::Kind::end)
         return {where, "there is more text after the end of the document; remove it"};
-    const bool closes = found == '}' || found == ']';
-    if (before.last == ',' && closes)
-        return {where, fmt::format("a {} is missing after the comma", in_object ? "key" : "value")};
-    if (before.last == ':') return {where, "a value is missing after the colon"};
-    if (in_object && before.is_key && found != ':') return {where, "a colon is missing after the key"};
-    if (in_object && (before.last == '{' || before.last == ','))
-        return {where, "a key in quotation marks is needed here"};
-    const bool starts_value =
-        found == '"' || found == '{' || found == '[' || found == '-' || (found >= '0' && found <= '9');
-    if (starts_value && before.last != '[' && before.last != ',')
-        return {where, "a comma is missing before this"};
-    if (closes)
-        return {where, fmt::format("there is a \"{}\" where {} is still open", found, describe(open.back()))};
-    const std::size_t stop = text.find_first_of(" \t\r\n,:]}", start + 1);
-    return {where,
-            fmt::format("{} is not a JSON value; a text needs quotation marks",
-                        in_quotes(text.substr(start, stop == std::string_view::npos ? stop : stop - start)))};
+    if (open.empty()) return {where, "a structure file begins with \"{\""};
+    return {where, order_trouble(fault, open)};
 }
 
-Complaint number_trouble(std::string_view text, std::size_t position, const std::string& token) {
-    return {place(text, token_start(text, position, token)),
-            fmt::format("the number {} is too large", in_quotes(token))};
+Complaint number_trouble(std::string_view text, std::size_t position) {
+    const Token found = fault_at(text, position, "").found;
+    return {place(text, found.begin), fmt::format("the number {} is too large", found.text)};
 }
 
 }  // namespace bandwright

@@ -3,6 +3,7 @@
 // SPDX-License-Identifier: MIT
 #pragma once
 
+#include <cstddef>
 #include <string>
 #include <string_view>
 #include <vector>
@@ -17,12 +18,12 @@ struct OpenContainer {
     std::string path;
 };
 
-/// Complaint about text that is not JSON. position: bytes read so far; token: the last token as far as it was
-/// read; reason: the parser's own words, looked at only to tell text that is not UTF-8. Errors: none.
-Complaint syntax_trouble(std::string_view text, std::size_t position, const std::string& token,
-                         std::string_view reason, const std::vector<OpenContainer>& open);
+/// Complaint about text that is not JSON. position: bytes read when the parser gave up; reason: the parser's
+/// own words, looked at only to tell what kind of token is at fault. Errors: none.
+Complaint syntax_trouble(std::string_view text, std::size_t position, std::string_view reason,
+                         const std::vector<OpenContainer>& open);
 
 /// Complaint about a number that does not fit; arguments as in syntax_trouble.
-Complaint number_trouble(std::string_view text, std::size_t position, const std::string& token);
+Complaint number_trouble(std::string_view text, std::size_t position);
 
 }  // namespace bandwright

@@ -58,14 +58,13 @@ class TreeBuilder {
     }
     bool end_object() { return close(); }
     bool end_array() { return close(); }
-    bool parse_error(std::size_t position, const std::string& token, const Json::exception& error) {
+    bool parse_error(std::size_t position, const std::string&, const Json::exception& error) {
         std::vector<OpenContainer> open;
         for (const Container& container : open_)
             open.push_back({container.value.kind == JsonValue::Kind::object, container.path});
         constexpr int out_of_range = 406;
-        result_.complaints = {error.id == out_of_range
-                                  ? number_trouble(text_, position, token)
-                                  : syntax_trouble(text_, position, token, error.what(), open)};
+        result_.complaints = {error.id == out_of_range ? number_trouble(text_, position)
+                                                       : syntax_trouble(text_, position, error.what(), open)};
         return false;
     }
 

@@ -121,6 +121,10 @@ double parse_quantity(std::string_view text, Unit unit, BareNumber bare) {
     if (whole.size() > number->length + 1 && whole[number->length] == ',' &&
         is_digit(whole[number->length + 1]))
         fail(fmt::format("the decimal separator is a point, as in \"{}\"", wanted.example), text);
+    const std::size_t after_e = unit_text.find_first_not_of("+-", 1);
+    if ((unit_text.starts_with('e') || unit_text.starts_with('E')) && after_e != std::string_view::npos &&
+        is_digit(unit_text[after_e]))
+        fail(fmt::format("there is a blank inside the number; write it as in \"{}\"", wanted.example), text);
     if (unit_text.empty() && unit != Unit::one) {
         if (bare == BareNumber::refused) throw QuantityError(missing_unit_text(unit, in_quotes(text)));
         unit_text = wanted.text;

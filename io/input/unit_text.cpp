@@ -1,6 +1,7 @@
 // SPDX-License-Identifier: MIT
 #include "io/input/unit_text.hpp"
 
+#include <algorithm>
 #include <array>
 #include <cctype>
 #include <cstdlib>
@@ -263,12 +264,18 @@ UnitValue parse_unit(std::string_view text) {
 
 std::string nearest_unit(std::string_view word, Unit wanted) {
     static constexpr std::string_view common[] = {
-        "um",   "nm", "cm", "mm", "m",   "angstrom", "V",   "mV",   "kV", "eV", "keV",    "meV", "MeV",
-        "s",    "us", "ns", "ms", "min", "h",        "K",   "degC", "A",  "mA", "uA",     "nA",  "ohm",
-        "kohm", "F",  "pF", "S",  "Hz",  "kHz",      "MHz", "C",    "J",  "W",  "degree", "rad",
+        "um",        "nm",   "cm",     "mm",   "m",      "angstrom", "V",      "mV",  "kV",    "eV",
+        "keV",       "meV",  "MeV",    "s",    "us",     "ns",       "ms",     "min", "h",     "K",
+        "degC",      "A",    "mA",     "uA",   "nA",     "ohm",      "kohm",   "F",   "pF",    "S",
+        "Hz",        "kHz",  "MHz",    "C",    "J",      "W",        "degree", "rad", "meter", "micrometer",
+        "nanometer", "volt", "second", "hour", "minute", "kelvin",
     };
     std::vector<std::string> of_kind, others;
     for (std::string_view name : common) {
+        // Symbols are so short that a difference of two letters says nothing.
+        const std::size_t longer = std::max(name.size(), word.size()),
+                          shorter = std::min(name.size(), word.size());
+        if (longer - shorter > 1) continue;
         const UnitValue value = parse_unit(name);
         const bool fits = value.dimension == info(wanted).dimension && value.angle == (wanted == Unit::angle);
         (fits ? of_kind : others).emplace_back(name);
