@@ -29,8 +29,12 @@ namespace {
 
 // A density that would fall to less than 1e-7 of itself falls by exp(16) at most in one step.
 constexpr double least_change = -1 + 1e-7, deepest_fall = -16;
+constexpr double straight_below = 0.5;
 
 double log_change(double relative_change) {
+    // Small changes are taken as they are: the quasi-Fermi level of a region then stays as flat as the linear step has it,
+    // and a floating region is not disturbed by terms of second order at its edges.
+    if (std::abs(relative_change) < straight_below) return relative_change;
     return relative_change < least_change ? deepest_fall : std::log1p(relative_change);
 }
 
