@@ -28,18 +28,21 @@ struct Sample {
     bool reachable = true;
 };
 
-// Extremes of either sign and, outward to them, a quarter and a sixteenth: an edge sweeps as the square root.
+// Zero, both extremes, and on each side the bias nearest to zero and one ninth of the extreme: an edge moves as the root.
 std::vector<Sample> samples_for(const std::vector<double>& biases, double thermal) {
-    double low = 0, high = 0;
-    for (const double bias : biases) {
-        low = std::min(low, bias / thermal);
-        high = std::max(high, bias / thermal);
-    }
     std::vector<Sample> samples{{0, {}, true}};
-    for (const double extreme : {low, high}) {
-        if (extreme == 0) continue;
-        if (std::abs(extreme) > 60) samples.push_back({extreme / 9, {}, true});
-        samples.push_back({extreme, {}, true});
+    for (const double sign : {-1.0, 1.0}) {
+        double nearest = 0, farthest = 0;
+        for (const double bias : biases) {
+            const double size = sign * bias / thermal;
+            if (!(size > 0)) continue;
+            nearest = nearest == 0 ? size : std::min(nearest, size);
+            farthest = std::max(farthest, size);
+        }
+        if (farthest == 0) continue;
+        if (nearest < 0.5 * farthest) samples.push_back({sign * nearest, {}, true});
+        if (farthest > 60 && nearest < 0.05 * farthest) samples.push_back({sign * farthest / 9, {}, true});
+        samples.push_back({sign * farthest, {}, true});
     }
     return samples;
 }

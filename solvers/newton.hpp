@@ -49,6 +49,9 @@ struct NewtonOptions {
     double cap = 10;
     /// Converged when the step that would come next is predicted below this.
     double tolerance = 1e-10;
+    /// Take a step in which every density changes by less than half straight, levels and all, instead of letting densities
+    /// take it. A little slower, but a floating region's level is then not disturbed by its edges.
+    bool straight_when_small = false;
     /// Solve Poisson's equation with both quasi-Fermi potentials held at zero: equilibrium. The step is shortened until
     /// the energy of the convex problem no longer falls along it, so this converges from any guess.
     bool equilibrium = false;

@@ -45,8 +45,7 @@ bool BiasWalk::start_from(State guess, double applied_voltage) {
         options.equilibrium = true;
         for (std::size_t node = 0; node < guess.nodes(); ++node) guess.unknowns[3 * node + 1] = guess.unknowns[3 * node + 2] = 0;
     }
-    report_ = solver_.solve(guess, applied_voltage, options);
-    iterations_ += report_.iterations;
+    solve(guess, applied_voltage, options);
     fresh_ = applied_voltage != 0;  // the equilibrium solve leaves Poisson's matrix alone in the workspace
     if (!report_.converged()) {
         message_ = describe_failure(solver_.system(), applied_voltage, report_);
@@ -54,6 +53,22 @@ bool BiasWalk::start_from(State guess, double applied_voltage) {
     }
     accept(std::move(guess), applied_voltage);
     return true;
+}
+
+bool BiasWalk::solve(State& guess, double applied_voltage, NewtonOptions options) {
+    const State before = guess;
+    for (const bool other : {false, true}) {
+        options.straight_when_small = other != straight_when_small_;
+        guess = before;
+        report_ = solver_.solve(guess, applied_voltage, options);
+        iterations_ += report_.iterations;
+        if (report_.converged()) {
+            straight_when_small_ = options.straight_when_small;
+            return true;
+        }
+        if (options.equilibrium) break;
+    }
+    return false;
 }
 
 void BiasWalk::accept(State state, double applied_voltage) {
@@ -78,8 +93,7 @@ BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux, const std::
         equations();
         solver_.predict(trial, solver_.tangent(), change);
         if (solver_.system().series_resistance == 0) trial.contact_voltage = next;
-        report_ = solver_.solve(trial, next);
-        iterations_ += report_.iterations;
+        solve(trial, next, {});
         fresh_ = true;
         if (!report_.converged()) {
             ++rejected_;

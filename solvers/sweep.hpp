@@ -41,6 +41,8 @@ class BiasWalk {
 
   private:
     void accept(State state, double applied_voltage);
+    // Newton from a guess, with the kind of step that served last and, where that fails, the other one.
+    bool solve(State& guess, double applied_voltage, NewtonOptions options);
 
     NewtonSolver solver_;
     State state_;
@@ -50,6 +52,7 @@ class BiasWalk {
     std::string message_;
     long iterations_ = 0, rejected_ = 0;
     bool fresh_ = false;
+    bool straight_when_small_ = false;
 };
 
 /// One sentence on a solve that has not converged: bias, remaining change, its place and layer.

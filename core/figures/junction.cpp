@@ -270,6 +270,9 @@ std::optional<double> neutral_psi_beyond(const View& v, double edge_depth, Regio
         before = node;
     }
     if (!best) return std::nullopt;
+    // Least beside a contact means least at the contact, which is neutral by its own equation.
+    if (*best == 1) return v.state.psi(0) * v.system.thermal_voltage;
+    if (*best + 2 == v.system.nodes()) return v.state.psi(*best + 1) * v.system.thermal_voltage;
     // The least share between nodes: the parabola through three logarithms, so that the place does not jump with nodes.
     const std::size_t node = *best;
     if (node < 1 || node + 1 >= v.system.nodes()) return v.state.psi(node) * v.system.thermal_voltage;
