@@ -45,7 +45,7 @@ void explain(const CLI::ParseError& error, const CLI::App& app, int argc, char**
         if (candidate->get_name() == verb) used = candidate;
     if (!used) {
         const std::string near = nearest_name(verb, verbs);
-        refuse(fmt::format("there is no command \"{}\"{}; the commands are {}", verb, near.empty() ? "" : fmt::format("; did you mean \"{}\"?", near), joined(verbs)));
+        refuse(fmt::format("there is no command \"{}\"{} The commands are {}", verb, near.empty() ? "." : fmt::format("; did you mean \"{}\"?", near), joined(verbs)));
     }
     const std::vector<std::string> names = option_names(*used);
     for (int k = 2; k < argc; ++k) {

@@ -59,10 +59,12 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
     std::vector<Sample> samples = samples_for(biases, thermal);
     const std::vector<Metallurgical> junctions = metallurgical_junctions(structure);
 
+    double largest_bias = 0;
+    for (const double bias : biases) largest_bias = std::max(largest_bias, std::abs(bias));
     std::vector<double> junction_depths;
     for (const Metallurgical& junction : junctions) junction_depths.push_back(junction.depth);
 
-    Spacing& spacing = result.spacing = first_spacing(structure, fixed);
+    Spacing& spacing = result.spacing = first_spacing(structure, fixed, largest_bias);
     result.mesh = mesh_from_spacing(fixed, spacing);
 
     // Solves every sample on a mesh; states of an older mesh serve as guesses.

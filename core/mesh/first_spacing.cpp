@@ -60,7 +60,8 @@ FixedDepths fixed_depths(const Structure& structure) {
     return fixed;
 }
 
-Spacing first_spacing(const Structure& structure, const FixedDepths& fixed) {
+Spacing first_spacing(const Structure& structure, const FixedDepths& fixed, double largest_bias) {
+    const std::vector<Metallurgical> junctions = metallurgical_junctions(structure);
     const double thermal = constants::thermal_voltage(structure.temperature);
     std::vector<double> around;
     for (const DopingEntry& entry : structure.doping)
@@ -110,6 +111,13 @@ Spacing first_spacing(const Structure& structure, const FixedDepths& fixed) {
             if (s == 0 || s + 1 == x.size()) {
                 const double density = std::max(std::abs(net[s]), 1e18);
                 width = std::min(width, debye_share * debye_length(bands.relative_permittivity, thermal, density));
+            }
+            if (largest_bias > 0 && net[s] != 0) {
+                const double permittivity = bands.relative_permittivity * constants::vacuum_permittivity;
+                const double reach = 1.3 * std::sqrt(2 * permittivity * (largest_bias + 1) / (constants::elementary_charge * std::abs(net[s])));
+                for (const Metallurgical& junction : junctions)
+                    if (std::abs(x[s] - junction.depth) < reach)
+                        width = std::min(width, debye_length(bands.relative_permittivity, thermal, std::abs(net[s])));
             }
             spacing.depth.push_back(x[s]);
             spacing.width.push_back(std::max(width, least_width));
