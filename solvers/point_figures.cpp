@@ -51,7 +51,9 @@ PointFigures point_figures(const DiscreteSystem& system, const State& state, con
         const auto magnitude = [](std::optional<double> value) { return value ? std::optional(std::abs(*value)) : value; };
         const double field = junction.peak_field ? std::abs(*junction.peak_field) : 0;
         set(PointFigure::peak_field, magnitude(junction.peak_field), field * (relative + 1e-12));
-        set(PointFigure::peak_field_depth, junction.peak_depth, depth * 1e-15);
+        // A summit's place follows a relative change of the field by that share of the depletion width.
+        const double width = junction.top_edge && junction.bottom_edge ? *junction.bottom_edge - *junction.top_edge : depth;
+        set(PointFigure::peak_field_depth, junction.peak_depth, depth * 1e-15 + width * (relative + 1e-12));
         set(PointFigure::extrapolated_field, magnitude(junction.extrapolated_field), field * (relative + 1e-12));
         set(PointFigure::depletion_top_edge, junction.top_edge, depth * 1e-15);
         set(PointFigure::depletion_bottom_edge, junction.bottom_edge, depth * 1e-15);

@@ -144,8 +144,9 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
         const double h = v.system.mesh.width(cell), l = sign * v.displacement[cell], r = sign * v.displacement[cell + 1];
         double from = 0, to = 1;
         for (int step = 0; step < 50; ++step) {
-            const double t = 0.5 * (from + to), d = 1e-6;
-            (hermite(t + d, h, l, left_slope, r, right_slope) > hermite(t - d, h, l, left_slope, r, right_slope) ? from : to) = t;
+            const double t = 0.5 * (from + to), t2 = t * t;
+            const double slope = 6 * (t - t2) * (r - l) + h * ((3 * t2 - 4 * t + 1) * left_slope + (3 * t2 - 2 * t) * right_slope);
+            (slope > 0 ? from : to) = t;
         }
         const double summit = hermite(0.5 * (from + to), h, l, left_slope, r, right_slope);
         if (summit > std::abs(peak)) {
