@@ -5,12 +5,13 @@
 
 #include "core/base/constants.hpp"
 #include "core/figures/field.hpp"
+#include "core/models/statistics.hpp"
 
 namespace bandwright {
 
 namespace {
 
-constexpr double neutral_enough = 1e-12;  // |charge| / |doping| at which nothing but rounding is left
+constexpr double neutral_enough = 1e-3;  // |charge| / |doping| at which a region counts as neutral
 constexpr double neutral_at_most = 0.05;  // |charge| / |doping| above which a place is not neutral
 constexpr double few_carriers = 0.05;      // carriers / doping below which a side counts as depleted
 
@@ -234,57 +235,55 @@ BoxNeutrality box_neutrality(const View& v, std::size_t node) {
     return box;
 }
 
-// psi [V] between two neighbouring nodes, the cubic through both potentials with the fields as slopes.
-double psi_between(const View& v, std::size_t cell, double share) {
-    const double h = v.system.mesh.width(cell), kT = v.system.thermal_voltage;
-    return hermite(share, h, v.state.psi(cell) * kT, -field_in_cell(v.system, cell, v.displacement[cell]), v.state.psi(cell + 1) * kT,
-                   -field_in_cell(v.system, cell, v.displacement[cell + 1]));
+// Potential [V] that a neutral region of the doping at a place would have.
+double neutral_potential_at(const View& v, std::size_t cell, double position) {
+    const Structure& s = v.system.structure;
+    const Material& material = s.materials[s.layers[v.system.mesh.layer_of_cell[cell]].material];
+    return neutral_potential(bands_at(material, s.temperature), s.models.statistics, s.temperature, v.net_at(cell, position));
 }
 
-// psi [V] where the charge is least in the nearest neutral region, outward from an edge: the first zero of the charge,
-// or the place of its least share of the doping.
+// Neutral potential [V] of the nearest neutral region outward from an edge: at the first place where the charge falls below a
+// thousandth of the doping or, in a steep profile that is nowhere so neutral, where its share is least. The place moves
+// smoothly with the solution; the first zero of the charge would not, because in a graded region zeros come and go.
 std::optional<double> neutral_psi_beyond(const View& v, double edge_depth, Region region, bool below) {
     std::optional<std::size_t> best;
-    double least = neutral_at_most;
+    double least = neutral_at_most, before_ratio = 0;
     std::optional<std::size_t> before;
     for (std::size_t step = 0; step <= region.last - region.first; ++step) {
         const std::size_t node = below ? region.first + step : region.last - step;
         if (below ? v.x(node) < edge_depth : v.x(node) > edge_depth) continue;
         if (node == 0 || node + 1 == v.system.nodes() || node == region.first || node == region.last) continue;
-        const BoxNeutrality here = box_neutrality(v, node);
-        if (here.ratio() <= neutral_enough) return v.state.psi(node) * v.system.thermal_voltage;
-        if (before) {
-            const BoxNeutrality there = box_neutrality(v, *before);
-            if ((here.charge > 0) != (there.charge > 0) && here.ratio() < neutral_at_most && there.ratio() < neutral_at_most) {
-                const std::size_t cell = std::min(node, *before);
-                const double density_here = here.charge / here.doping, density_there = there.charge / there.doping;
-                const double share = density_there / (density_there - density_here);  // from `before` to here
-                return psi_between(v, cell, below ? share : 1 - share);
+        const double ratio = box_neutrality(v, node).ratio();
+        const std::size_t cell = below ? node - 1 : node;  // on the junction's side of the node
+        if (ratio <= neutral_enough) {
+            double place = below ? std::max(edge_depth, v.x(node - 1)) : std::min(edge_depth, v.x(node + 1));
+            if (before) {
+                const double share = std::log(before_ratio / neutral_enough) / std::log(before_ratio / std::max(ratio, 1e-300));
+                place = v.x(*before) + share * (v.x(node) - v.x(*before));
             }
+            return neutral_potential_at(v, cell, place);
         }
-        if (here.ratio() < least) {
-            least = here.ratio();
+        if (ratio < least) {
+            least = ratio;
             best = node;
-        } else if (best && here.ratio() > 10 * least && here.ratio() > 0.01) {
+        } else if (best && ratio > 10 * least && ratio > 0.01) {
             break;  // the next space charge begins
         }
         before = node;
+        before_ratio = ratio;
     }
     if (!best) return std::nullopt;
-    // Least beside a contact means least at the contact, which is neutral by its own equation.
-    if (*best == 1) return v.state.psi(0) * v.system.thermal_voltage;
-    if (*best + 2 == v.system.nodes()) return v.state.psi(*best + 1) * v.system.thermal_voltage;
-    // The least share between nodes: the parabola through three logarithms, so that the place does not jump with nodes.
     const std::size_t node = *best;
-    if (node < 1 || node + 1 >= v.system.nodes()) return v.state.psi(node) * v.system.thermal_voltage;
+    // Least beside a contact means least at the contact, which is neutral by its own equation.
+    if (node == 1) return v.state.psi(0) * v.system.thermal_voltage;
+    if (node + 2 == v.system.nodes()) return v.state.psi(node + 1) * v.system.thermal_voltage;
+    // The least share between nodes: the parabola through three logarithms, so that the place does not jump with nodes.
     const double x0 = v.x(node - 1) - v.x(node), x2 = v.x(node + 1) - v.x(node);
     const double y1 = std::log(box_neutrality(v, node).ratio());
     const double y0 = std::log(box_neutrality(v, node - 1).ratio()) - y1, y2 = std::log(box_neutrality(v, node + 1).ratio()) - y1;
     const double curvature = (y2 / x2 - y0 / x0) / (x2 - x0), slope = y0 / x0 - curvature * x0;
-    double offset = curvature > 0 ? -slope / (2 * curvature) : 0;
-    offset = std::clamp(offset, 0.5 * x0, 0.5 * x2);
-    if (offset < 0) return psi_between(v, node - 1, 1 - offset / x0);
-    return psi_between(v, node, offset / x2);
+    const double offset = std::clamp(curvature > 0 ? -slope / (2 * curvature) : 0, 0.5 * x0, 0.5 * x2);
+    return neutral_potential_at(v, offset < 0 ? node - 1 : node, v.x(node) + offset);
 }
 
 }  // namespace
