@@ -13,7 +13,14 @@ class App;
 namespace bandwright {
 
 /// Exit statuses, fixed for scripts of other people.
-enum class Exit { done = 0, wrong_input = 2, stopped_short = 3, file_trouble = 4, bug = 70, interrupted = 130 };
+enum class Exit {
+    done = 0,
+    wrong_input = 2,
+    stopped_short = 3,
+    file_trouble = 4,
+    bug = 70,
+    interrupted = 130
+};
 
 /// Options that every command shares.
 struct CommonOptions {

@@ -31,8 +31,9 @@ void ProgressBar::show(double share, const std::string& text) {
     int columns = ioctl(STDERR_FILENO, TIOCGWINSZ, &size) == 0 && size.ws_col > 20 ? size.ws_col : 80;
     const int width = std::max(10, std::min(40, columns - 30));
     const int filled = static_cast<int>(std::clamp(share, 0.0, 1.0) * width);
-    std::string line = fmt::format("{:3.0f} % {}{} {}", 100 * share, std::string(static_cast<std::size_t>(filled), '#'),
-                                   std::string(static_cast<std::size_t>(width - filled), '.'), text);
+    std::string line =
+        fmt::format("{:3.0f} % {}{} {}", 100 * share, std::string(static_cast<std::size_t>(filled), '#'),
+                    std::string(static_cast<std::size_t>(width - filled), '.'), text);
     line.resize(static_cast<std::size_t>(std::min<int>(columns - 1, static_cast<int>(line.size()))));
     if (line == last_) return;
     last_ = line;
@@ -61,7 +62,8 @@ namespace {
 
 // Columns that a text takes on a terminal: bytes that do not continue a UTF-8 character.
 std::size_t width_of(const std::string& text) {
-    return static_cast<std::size_t>(std::count_if(text.begin(), text.end(), [](char c) { return (static_cast<unsigned char>(c) & 0xC0) != 0x80; }));
+    return static_cast<std::size_t>(std::count_if(
+        text.begin(), text.end(), [](char c) { return (static_cast<unsigned char>(c) & 0xC0) != 0x80; }));
 }
 
 std::string padded(const std::string& text, std::size_t width, bool left) {
@@ -74,7 +76,8 @@ std::string padded(const std::string& text, std::size_t width, bool left) {
 std::string TextTable::text() const {
     std::vector<std::size_t> widths(headings.size(), 0);
     const auto measure = [&](const std::vector<std::string>& row) {
-        for (std::size_t k = 0; k < row.size() && k < widths.size(); ++k) widths[k] = std::max(widths[k], width_of(row[k]));
+        for (std::size_t k = 0; k < row.size() && k < widths.size(); ++k)
+            widths[k] = std::max(widths[k], width_of(row[k]));
     };
     measure(headings);
     measure(units);
@@ -82,7 +85,8 @@ std::string TextTable::text() const {
     std::string out;
     const auto add = [&](const std::vector<std::string>& row) {
         std::string line = " ";
-        for (std::size_t k = 0; k < row.size(); ++k) line += " " + padded(row[k], widths[k], k < left.size() && left[k]) + " ";
+        for (std::size_t k = 0; k < row.size(); ++k)
+            line += " " + padded(row[k], widths[k], k < left.size() && left[k]) + " ";
         out += line.substr(0, line.find_last_not_of(' ') + 1) + "\n";
     };
     add(headings);

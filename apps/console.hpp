@@ -28,7 +28,8 @@ class ProgressBar {
     std::string last_;
 };
 
-/// A value with its error: digits down to the second one of the error, at most `digits`: "-5.775e-07 +- 2.1e-10".
+/// A value with its error: digits down to the second one of the error, at most `digits`: "-5.775e-07
+/// +- 2.1e-10".
 std::string value_with_error(double value, double error, int digits = 7);
 
 /// Text columns, right-aligned unless `left` names them; headings and units above.

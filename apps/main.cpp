@@ -19,7 +19,8 @@ int main(int argc, char** argv) {
         complain(error.what());
         status = Exit::file_trouble;
     } catch (const std::exception& error) {
-        complain(std::string("this is a bug of ours, please report it with the structure file: ") + error.what());
+        complain(std::string("this is a bug of ours, please report it with the structure file: ") +
+                 error.what());
         status = Exit::bug;
     }
     // A full disk shows only now: what was printed must have arrived.

@@ -16,11 +16,14 @@ namespace {
 
 void add_common(CLI::App& app, CommonOptions& common) {
     app.add_option("FILE", common.file, "structure file (JSON)")->required();
-    app.add_option("-o,--output", common.output, "result file; default: structure and command, in the working directory");
-    app.add_option("--set", common.overrides, "POINTER=VALUE: replace one value of the structure (repeatable)")
+    app.add_option("-o,--output", common.output,
+                   "result file; default: structure and command, in the working directory");
+    app.add_option("--set", common.overrides,
+                   "POINTER=VALUE: replace one value of the structure (repeatable)")
         ->allow_extra_args(false);
     app.add_option("--junction", common.junction, "depth of the junction that figures speak of (um)");
-    app.add_option("--max-current", common.max_current, "current density at which a sweep ends (A cm-2, default 1e6)");
+    app.add_option("--max-current", common.max_current,
+                   "current density at which a sweep ends (A cm-2, default 1e6)");
     app.add_flag("--json", common.json, "print the summary as JSON on standard output, nothing else there");
     app.add_flag("--quiet", common.quiet, "no progress, no table");
 }
@@ -38,14 +41,16 @@ std::vector<std::string> option_names(const CLI::App& app) {
 void explain(const CLI::ParseError& error, const CLI::App& app, int argc, char** argv) {
     std::vector<std::string> verbs;
     for (const Command& command : commands()) verbs.push_back(command.name);
-    if (argc < 2) refuse(fmt::format("a command is needed: {}; \"bandwright --help\" says more", joined(verbs)));
+    if (argc < 2)
+        refuse(fmt::format("a command is needed: {}; \"bandwright --help\" says more", joined(verbs)));
     const std::string verb = argv[1];
     const CLI::App* used = nullptr;
     for (const CLI::App* candidate : app.get_subcommands([](const CLI::App*) { return true; }))
         if (candidate->get_name() == verb) used = candidate;
     if (!used) {
         const std::string near = nearest_name(verb, verbs);
-        refuse(fmt::format("there is no command \"{}\"{} The commands are {}", verb, near.empty() ? "." : fmt::format("; did you mean \"{}\"?", near), joined(verbs)));
+        refuse(fmt::format("there is no command \"{}\"{} The commands are {}", verb,
+                           near.empty() ? "." : fmt::format("; did you mean \"{}\"?", near), joined(verbs)));
     }
     const std::vector<std::string> names = option_names(*used);
     for (int k = 2; k < argc; ++k) {
@@ -53,9 +58,12 @@ void explain(const CLI::ParseError& error, const CLI::App& app, int argc, char**
         word = word.substr(0, word.find('='));
         if (!word.starts_with("--") || std::find(names.begin(), names.end(), word) != names.end()) continue;
         const std::string near = nearest_name(word, names);
-        refuse(fmt::format("{} has no option \"{}\"{}", verb, word, near.empty() ? fmt::format("; it has {}", joined(names)) : fmt::format("; did you mean \"{}\"?", near)));
+        refuse(fmt::format("{} has no option \"{}\"{}", verb, word,
+                           near.empty() ? fmt::format("; it has {}", joined(names))
+                                        : fmt::format("; did you mean \"{}\"?", near)));
     }
-    if (dynamic_cast<const CLI::RequiredError*>(&error)) refuse(fmt::format("{} needs a structure file: bandwright {} FILE", verb, verb));
+    if (dynamic_cast<const CLI::RequiredError*>(&error))
+        refuse(fmt::format("{} needs a structure file: bandwright {} FILE", verb, verb));
     refuse(fmt::format("{}: {}", verb, error.what()));
 }
 
@@ -83,7 +91,8 @@ Exit run_command_line(int argc, char** argv) {
     app.set_version_flag("--version", std::string("bandwright ") + version);
     app.require_subcommand(1);
     CommonOptions common;
-    for (int k = 0; k < argc; ++k) common.command_line += (k ? " " : "") + std::string(k ? argv[k] : "bandwright");
+    for (int k = 0; k < argc; ++k)
+        common.command_line += (k ? " " : "") + std::string(k ? argv[k] : "bandwright");
     std::vector<std::pair<CLI::App*, std::function<Exit(const CommonOptions&)>>> runs;
     for (const Command& command : commands()) {
         CLI::App* sub = app.add_subcommand(command.name, command.help);

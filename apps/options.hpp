@@ -1,6 +1,5 @@
-// The command line: common options, parsing, suggestions for what is misspelt. CLI11 is included in the .cpp files alone.
-// Not for: what a command does (commands/).
-// SPDX-License-Identifier: MIT
+// The command line: common options, parsing, suggestions for what is misspelt. CLI11 is included in the .cpp
+// files alone. Not for: what a command does (commands/). SPDX-License-Identifier: MIT
 #pragma once
 
 #include <optional>
@@ -12,8 +11,8 @@
 
 namespace bandwright {
 
-/// Parses the command line and runs the command. Errors: InputError for a command line that says nothing that can be
-/// done; whatever the command throws.
+/// Parses the command line and runs the command. Errors: InputError for a command line that says nothing that
+/// can be done; whatever the command throws.
 Exit run_command_line(int argc, char** argv);
 
 /// Value of an option in memory units; a bare number is in the option's natural unit.

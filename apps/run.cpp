@@ -44,9 +44,12 @@ std::filesystem::path output_path(const std::string& command, const CommonOption
 std::string status_word(EndReason end) {
     switch (end) {
         case EndReason::complete:
-        case EndReason::current_limit: return "complete";
-        case EndReason::stopped_short: return "stopped short";
-        case EndReason::interrupted: return "interrupted";
+        case EndReason::current_limit:
+            return "complete";
+        case EndReason::stopped_short:
+            return "stopped short";
+        case EndReason::interrupted:
+            return "interrupted";
     }
     return "";
 }
@@ -66,9 +69,10 @@ void print_points(const Table& points) {
         const char* column;
         const char* heading;
     };
-    for (const Pick& pick : {Pick{"bias", "bias"}, Pick{"current_density", "current density"}, Pick{"current", "current"},
-                             Pick{"depletion_width", "depletion width"}, Pick{"peak_field", "peak field"},
-                             Pick{"extrapolated_field", "extrapolated field"}}) {
+    for (const Pick& pick :
+         {Pick{"bias", "bias"}, Pick{"current_density", "current density"}, Pick{"current", "current"},
+          Pick{"depletion_width", "depletion width"}, Pick{"peak_field", "peak field"},
+          Pick{"extrapolated_field", "extrapolated field"}}) {
         const Column* column = points.find(pick.column);
         if (!column) continue;
         table.headings.push_back(pick.heading);
@@ -76,24 +80,31 @@ void print_points(const Table& points) {
         table.rows.resize(points.rows());
         for (std::size_t row = 0; row < points.rows(); ++row)
             table.rows[row].push_back(
-                value_with_error(shown(column->values[row], column->unit), column->errors.empty() ? 0 : shown(column->errors[row], column->unit)));
+                value_with_error(shown(column->values[row], column->unit),
+                                 column->errors.empty() ? 0 : shown(column->errors[row], column->unit)));
     }
     fmt::print("{}", table.text());
 }
 
-void print_outcome(const Results& results, const BiasOutcome& outcome, const std::filesystem::path& path, double seconds) {
-    fmt::print("{}\n{} K, {} at {} bias points\n\n", results.title, results.temperature, results.command, results.points.rows());
+void print_outcome(const Results& results, const BiasOutcome& outcome, const std::filesystem::path& path,
+                   double seconds) {
+    fmt::print("{}\n{} K, {} at {} bias points\n\n", results.title, results.temperature, results.command,
+               results.points.rows());
     print_points(results.points);
     fmt::print("\n");
     for (const Figure& figure : results.figures)
         fmt::print("  {:<20} {} {}\n", figure.name,
-                   std::isnan(figure.value) ? figure.state : value_with_error(shown(figure.value, figure.unit), shown(figure.error, figure.unit)),
+                   std::isnan(figure.value)
+                       ? figure.state
+                       : value_with_error(shown(figure.value, figure.unit), shown(figure.error, figure.unit)),
                    std::isnan(figure.value) ? "" : info(figure.unit).text);
     for (const JunctionLine& junction : results.junctions)
-        fmt::print("  junction at {:.6g} um, {}: forward bias is V {} 0 (V = V_top - V_bottom)\n", shown(junction.depth, Unit::length),
-                   junction.p_above ? "p above n" : "n above p", junction.p_above ? ">" : "<");
-    fmt::print("\n  {} nodes, {} Newton iterations in all, {:.2f} s; \u00b1 is the estimated numerical error\n", outcome.counts.nodes,
-               outcome.counts.newton_iterations, seconds);
+        fmt::print("  junction at {:.6g} um, {}: forward bias is V {} 0 (V = V_top - V_bottom)\n",
+                   shown(junction.depth, Unit::length), junction.p_above ? "p above n" : "n above p",
+                   junction.p_above ? ">" : "<");
+    fmt::print(
+        "\n  {} nodes, {} Newton iterations in all, {:.2f} s; \u00b1 is the estimated numerical error\n",
+        outcome.counts.nodes, outcome.counts.newton_iterations, seconds);
     fmt::print("  written to {}\n", path.string());
 }
 
@@ -102,11 +113,14 @@ void print_outcome(const Results& results, const BiasOutcome& outcome, const std
 std::vector<std::string> cautions(const Structure& structure, double largest_bias) {
     std::vector<std::string> list;
     double widest = 0;
-    for (const Layer& layer : structure.layers) widest = std::max(widest, bandgap_at(structure.materials[layer.material], structure.temperature));
+    for (const Layer& layer : structure.layers)
+        widest = std::max(widest, bandgap_at(structure.materials[layer.material], structure.temperature));
     if (std::abs(largest_bias) > 50 || widest > 2)
-        list.push_back(fmt::format("{}: a 1-D result has no edge or corner fields, which set the real limit of a part; follow local codes and "
-                                   "licensed practice, and trust measured silicon over any solution",
-                                   widest > 2 ? "wide-gap material" : "high voltage"));
+        list.push_back(
+            fmt::format("{}: a 1-D result has no edge or corner fields, which set the real limit of a part; "
+                        "follow local codes and "
+                        "licensed practice, and trust measured silicon over any solution",
+                        widest > 2 ? "wide-gap material" : "high voltage"));
     return list;
 }
 
@@ -129,15 +143,19 @@ Results results_of_input(const std::string& command, const CommonOptions& option
 BiasRequest request_from(const CommonOptions& options, std::vector<double> biases) {
     BiasRequest request;
     request.biases = std::move(biases);
-    if (!options.junction.empty()) request.junction_depth = option_value("--junction", options.junction, Unit::length);
+    if (!options.junction.empty())
+        request.junction_depth = option_value("--junction", options.junction, Unit::length);
     if (!options.max_current.empty()) {
         request.max_current = option_value("--max-current", options.max_current, Unit::current_density);
-        if (!(request.max_current > 0)) throw InputError("", {{"--max-current", "must be greater than 0 (found \"" + options.max_current + "\")"}});
+        if (!(request.max_current > 0))
+            throw InputError(
+                "", {{"--max-current", "must be greater than 0 (found \"" + options.max_current + "\")"}});
     }
     return request;
 }
 
-Exit solve_and_report(const std::string& command, const CommonOptions& options, const ReadResult& input, const BiasRequest& request) {
+Exit solve_and_report(const std::string& command, const CommonOptions& options, const ReadResult& input,
+                      const BiasRequest& request) {
     using Clock = std::chrono::steady_clock;
     const std::filesystem::path path = output_path(command, options);
     Results results = results_of_input(command, options, input);
@@ -150,7 +168,9 @@ Exit solve_and_report(const std::string& command, const CommonOptions& options, 
     ProgressBar bar(options.quiet || options.json);
     const auto start = Clock::now();
     auto last_checkpoint = start;
-    const auto seconds_since = [](Clock::time_point then) { return std::chrono::duration<double>(Clock::now() - then).count(); };
+    const auto seconds_since = [](Clock::time_point then) {
+        return std::chrono::duration<double>(Clock::now() - then).count();
+    };
     Hooks hooks;
     hooks.progress = [&](double share, const std::string& text) { bar.show(share, text); };
     hooks.should_stop = [] { return stop_asked.load(); };
@@ -176,10 +196,12 @@ Exit solve_and_report(const std::string& command, const CommonOptions& options, 
     for (const std::string& warning : results.warnings)
         if (warning != outcome.message || outcome.end == EndReason::current_limit) warn(warning);
     if (outcome.end == EndReason::stopped_short)
-        complain(has_points ? fmt::format("{}. {} of {} points are saved in {}", outcome.message, results.points.rows(), request.biases.size(), path.string())
+        complain(has_points ? fmt::format("{}. {} of {} points are saved in {}", outcome.message,
+                                          results.points.rows(), request.biases.size(), path.string())
                             : outcome.message + ". No point was reached, so no file is written");
     if (outcome.end == EndReason::interrupted)
-        complain(has_points ? fmt::format("interrupted; {} of {} points are saved in {}", results.points.rows(), request.biases.size(), path.string())
+        complain(has_points ? fmt::format("interrupted; {} of {} points are saved in {}",
+                                          results.points.rows(), request.biases.size(), path.string())
                             : "interrupted before the first point; no file is written");
     if (options.json)
         fmt::print("{}\n", summary_json(results));

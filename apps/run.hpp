@@ -1,6 +1,5 @@
-// Running an analysis for a command: reading, signals, checkpoints, writing, exit status. Shared by bands and iv.
-// Not for: the options of one command (commands/).
-// SPDX-License-Identifier: MIT
+// Running an analysis for a command: reading, signals, checkpoints, writing, exit status. Shared by bands and
+// iv. Not for: the options of one command (commands/). SPDX-License-Identifier: MIT
 #pragma once
 
 #include "apps/command.hpp"
@@ -18,7 +17,8 @@ Results results_of_input(const std::string& command, const CommonOptions& option
 BiasRequest request_from(const CommonOptions& options, std::vector<double> biases);
 
 /// Solves, keeps the result file up to date every 8 s, stops on SIGINT and SIGTERM, prints table or JSON.
-Exit solve_and_report(const std::string& command, const CommonOptions& options, const ReadResult& input, const BiasRequest& request);
+Exit solve_and_report(const std::string& command, const CommonOptions& options, const ReadResult& input,
+                      const BiasRequest& request);
 
 /// Cautions that belong to a structure: high voltage, wide gap.
 std::vector<std::string> cautions(const Structure& structure, double largest_bias);

@@ -15,10 +15,10 @@ namespace bandwright {
 
 namespace {
 
-constexpr int passes = 4;               // demand passes; the demand settles in three
-constexpr int rounds = 4;               // of scaling all widths after that
-constexpr double growth = 0.2;          // of the width per unit of depth; 20 % from cell to cell
-constexpr double least_width = 2e-11;   // [m]
+constexpr int passes = 4;              // demand passes; the demand settles in three
+constexpr int rounds = 4;              // of scaling all widths after that
+constexpr double growth = 0.2;         // of the width per unit of depth; 20 % from cell to cell
+constexpr double least_width = 2e-11;  // [m]
 constexpr std::size_t most_nodes = 400000;
 
 /// A bias at which meshes are judged, and the last state found there.
@@ -28,7 +28,8 @@ struct Sample {
     bool reachable = true;
 };
 
-// Zero, both extremes, and on each side the bias nearest to zero and one ninth of the extreme: an edge moves as the root.
+// Zero, both extremes, and on each side the bias nearest to zero and one ninth of the extreme: an edge moves
+// as the root.
 std::vector<Sample> samples_for(const std::vector<double>& biases, double thermal) {
     std::vector<Sample> samples{{0, {}, true}};
     for (const double sign : {-1.0, 1.0}) {
@@ -97,7 +98,8 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
                 const BiasWalk::Arrival arrival = walk.walk_to(sample.voltage, most_flux, should_stop);
                 if (arrival != BiasWalk::Arrival::arrived) {
                     // The mesh then serves what was reached; the sweep itself will say where it stopped.
-                    if (!patient || arrival == BiasWalk::Arrival::current_limit) sample.voltage = walk.voltage();
+                    if (!patient || arrival == BiasWalk::Arrival::current_limit)
+                        sample.voltage = walk.voltage();
                     sample.reachable = arrival == BiasWalk::Arrival::current_limit;
                     if (!sample.reachable) continue;
                 }
@@ -122,12 +124,14 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
         solve_samples(
             system,
             [&](const Sample&, BiasWalk& walk) {
-                for (Demand& demand : demands_of(system, walk.state(), walk.equations())) demands.push_back(std::move(demand));
+                for (Demand& demand : demands_of(system, walk.state(), walk.equations()))
+                    demands.push_back(std::move(demand));
                 seen.add(walk.equations());
             },
             pass > 0);
         if (!result.ok || (should_stop && should_stop())) return result;
-        spacing = widths_for(result.mesh, demands, largest_widths(system, seen, junction_depths, aim), aim, least_width);
+        spacing = widths_for(result.mesh, demands, largest_widths(system, seen, junction_depths, aim), aim,
+                             least_width);
         limit_growth(spacing, growth);
         const Mesh next = mesh_from_spacing(fixed, spacing);
         move_states(result.mesh, next);
@@ -160,15 +164,18 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
             [&](const Sample& sample, BiasWalk& walk) {
                 if (sample.voltage == 0) equilibrium = walk.state();
                 const std::size_t which =
-                    junctions.empty() ? 0 : most_biased_junction(system, junctions, equilibrium, walk.state());
-                const PointFigures fine = point_figures(system, walk.state(), walk.equations(), junctions, which);
+                    junctions.empty() ? 0
+                                      : most_biased_junction(system, junctions, equilibrium, walk.state());
+                const PointFigures fine =
+                    point_figures(system, walk.state(), walk.equations(), junctions, which);
                 BiasWalk nested(coarse);
                 State guess = walk.state();
                 guess.unknowns = injected(result.mesh, guess.unknowns, 3);
                 const bool solved = nested.start_from(guess, sample.voltage);
                 result.iterations += nested.iterations();
                 if (!solved) return;
-                const PointFigures other = point_figures(coarse, nested.state(), nested.equations(), junctions, which);
+                const PointFigures other =
+                    point_figures(coarse, nested.state(), nested.equations(), junctions, which);
                 errors[static_cast<std::size_t>(&sample - samples.data())] = relative_errors(fine, other);
             },
             true);
@@ -177,7 +184,8 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
         for (std::size_t k = 0; k < samples.size(); ++k)
             for (std::size_t figure = 0; figure < point_figure_count; ++figure) {
                 // Second order: the error should fall as the square of the width; half of that is asked for.
-                if (round > 0 && errors[k][figure] > previous[k][figure] * std::pow(last_scaling, 1.0)) stuck[k][figure] = true;
+                if (round > 0 && errors[k][figure] > previous[k][figure] * std::pow(last_scaling, 1.0))
+                    stuck[k][figure] = true;
                 if (!stuck[k][figure]) worst = std::max(worst, errors[k][figure]);
             }
         if (worst <= tolerance || result.mesh.nodes() > most_nodes) break;

@@ -26,10 +26,10 @@ struct AdaptedMesh {
 
 /// Mesh for all biases between the extremes of a list [V], zero included.
 ///
-/// Every pass solves on the present mesh at equilibrium and at a few biases up to both extremes, collects demands and
-/// lays the next mesh. The last passes compare figures with those of the coarsened mesh and scale all widths until the
-/// estimated relative errors meet the tolerance. A bias that cannot be reached, or lies beyond the current limit, is
-/// left out: the mesh then serves the biases that were reached.
+/// Every pass solves on the present mesh at equilibrium and at a few biases up to both extremes, collects
+/// demands and lays the next mesh. The last passes compare figures with those of the coarsened mesh and scale
+/// all widths until the estimated relative errors meet the tolerance. A bias that cannot be reached, or lies
+/// beyond the current limit, is left out: the mesh then serves the biases that were reached.
 AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& biases, double max_current,
                          const std::function<bool()>& should_stop = {});
 

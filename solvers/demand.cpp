@@ -11,9 +11,10 @@ namespace bandwright {
 
 namespace {
 
-// Second derivative at each cell: the larger of its two nodes'; a fixed node, where values may jump, does not count.
-std::vector<double> second_derivative(const Mesh& mesh, const std::vector<double>& left, const std::vector<double>& right,
-                                      const std::vector<double>& noise) {
+// Second derivative at each cell: the larger of its two nodes'; a fixed node, where values may jump, does not
+// count.
+std::vector<double> second_derivative(const Mesh& mesh, const std::vector<double>& left,
+                                      const std::vector<double>& right, const std::vector<double>& noise) {
     std::vector<double> at_node(mesh.nodes(), 0.0);
     std::vector<char> is_fixed(mesh.nodes(), 0);
     for (const std::size_t node : mesh.fixed) is_fixed[node] = 1;
@@ -42,8 +43,8 @@ std::vector<double> second_derivative(const Mesh& mesh, const std::vector<double
 }
 
 // Curvature of psi [m^-2] in a cell, from its charge, weighted by where a carrier's path resists most.
-Demand flux_demand(const DiscreteSystem& system, const State& state, const Equations& equations, bool electrons,
-                   double share) {
+Demand flux_demand(const DiscreteSystem& system, const State& state, const Equations& equations,
+                   bool electrons, double share) {
     const std::size_t cells = system.cells();
     Demand demand(cells, 0.0);
     if (!(share > 1e-6)) return demand;
@@ -53,15 +54,18 @@ Demand flux_demand(const DiscreteSystem& system, const State& state, const Equat
         const EndCoefficients& end = system.of_cell(cell);
         const double psi = 0.5 * (state.psi(cell) + state.psi(cell + 1));
         const double speed = electrons ? system.electron_speed[cell] : system.hole_speed[cell];
-        exponent[cell] = electrons ? -(psi + end.affinity + end.log_Nc) : psi - end.negative_ionization - end.log_Nv;
+        exponent[cell] =
+            electrons ? -(psi + end.affinity + end.log_Nc) : psi - end.negative_ionization - end.log_Nv;
         exponent[cell] -= std::log(speed * system.mesh.width(cell));
         largest = std::max(largest, exponent[cell]);
     }
     double total = 0;
-    for (std::size_t cell = 0; cell < cells; ++cell) total += std::exp(exponent[cell] - largest) * system.mesh.width(cell);
+    for (std::size_t cell = 0; cell < cells; ++cell)
+        total += std::exp(exponent[cell] - largest) * system.mesh.width(cell);
     for (std::size_t cell = 0; cell < cells; ++cell) {
         const double h = system.mesh.width(cell);
-        const double rho = std::max(std::abs(charge_left(system, equations, cell)), std::abs(charge_right(system, equations, cell)));
+        const double rho = std::max(std::abs(charge_left(system, equations, cell)),
+                                    std::abs(charge_right(system, equations, cell)));
         const double curvature = rho / (system.dielectric[cell] * h);
         demand[cell] = share * std::exp(exponent[cell] - largest) / total * curvature / 12;
     }
@@ -77,7 +81,8 @@ void SeenDensities::add(const Equations& equations) {
         least.assign(cells, INFINITY);
     }
     for (std::size_t cell = 0; cell < cells; ++cell) {
-        const double density = 0.5 * (equations.left[cell].n + equations.left[cell].p + equations.right[cell].n + equations.right[cell].p);
+        const double density = 0.5 * (equations.left[cell].n + equations.left[cell].p +
+                                      equations.right[cell].n + equations.right[cell].p);
         most[cell] = std::max(most[cell], density);
         least[cell] = std::min(least[cell], density);
     }
@@ -94,7 +99,8 @@ std::vector<Demand> demands_of(const DiscreteSystem& system, const State& state,
     for (std::size_t cell = 0; cell < cells; ++cell) {
         left[cell] = charge_left(system, equations, cell);
         right[cell] = charge_right(system, equations, cell);
-        noise[cell] = 1e-11 * (equations.left[cell].n + equations.left[cell].p + equations.right[cell].n + equations.right[cell].p);
+        noise[cell] = 1e-11 * (equations.left[cell].n + equations.left[cell].p + equations.right[cell].n +
+                               equations.right[cell].p);
     }
     Demand charge = second_derivative(system.mesh, left, right, noise);
     for (double& value : charge) value /= 12 * std::max(largest, 1e-300);
@@ -120,9 +126,12 @@ std::vector<Demand> demands_of(const DiscreteSystem& system, const State& state,
         most_hole = std::max(most_hole, std::abs(profile.hole[cell]));
     }
     const double scale = std::max({total, recombined, 1e-300});
-    const double at_a = std::abs(equations.flux[current.electron_cell].electron), at_b = std::abs(equations.flux[current.hole_cell].hole);
-    demands.push_back(flux_demand(system, state, equations, true, state.contact_voltage == 0 ? 1 : std::min(1.0, at_a / scale)));
-    demands.push_back(flux_demand(system, state, equations, false, state.contact_voltage == 0 ? 1 : std::min(1.0, at_b / scale)));
+    const double at_a = std::abs(equations.flux[current.electron_cell].electron),
+                 at_b = std::abs(equations.flux[current.hole_cell].hole);
+    demands.push_back(flux_demand(system, state, equations, true,
+                                  state.contact_voltage == 0 ? 1 : std::min(1.0, at_a / scale)));
+    demands.push_back(flux_demand(system, state, equations, false,
+                                  state.contact_voltage == 0 ? 1 : std::min(1.0, at_b / scale)));
     return demands;
 }
 
@@ -139,8 +148,10 @@ std::vector<double> largest_widths(const DiscreteSystem& system, const SeenDensi
             // Edge of a layer of charge q N W; see the derivation in DEVELOPERS.md.
             constexpr double least_layer = 30;  // in Debye lengths
             double distance = INFINITY;
-            for (const double depth : junction_depths) distance = std::min(distance, std::abs(system.mesh.position[cell] - depth));
-            const double layer = std::isfinite(distance) ? std::max(least_layer, distance / debye) : least_layer;
+            for (const double depth : junction_depths)
+                distance = std::min(distance, std::abs(system.mesh.position[cell] - depth));
+            const double layer =
+                std::isfinite(distance) ? std::max(least_layer, distance / debye) : least_layer;
             widths[cell] = std::min(widths[cell], debye * std::sqrt(3 * tolerance * layer));
         }
     }
@@ -150,9 +161,11 @@ std::vector<double> largest_widths(const DiscreteSystem& system, const SeenDensi
         const double h = system.mesh.width(cell);
         const double l = system.net_left[cell], r = system.net_right[cell];
         if (l == 0 || r == 0 || (l > 0) != (r > 0)) continue;
-        // ln N changes by |slope| h across the cell; keep (slope h)^2 / 24 well below the tolerance's square root.
+        // ln N changes by |slope| h across the cell; keep (slope h)^2 / 24 well below the tolerance's square
+        // root.
         const double slope = 2 * std::abs(std::log(r / l)) / h;
-        if (slope > 0) widths[cell] = std::min(widths[cell], std::sqrt(24 * std::sqrt(tolerance) * 0.3) / slope);
+        if (slope > 0)
+            widths[cell] = std::min(widths[cell], std::sqrt(24 * std::sqrt(tolerance) * 0.3) / slope);
     }
     return widths;
 }

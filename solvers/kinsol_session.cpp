@@ -24,7 +24,10 @@ struct KinsolSession::Memory {
     std::exception_ptr thrown;
     std::string message;
 
-    ~Memory() { release(); if (context) SUNContext_Free(&context); }
+    ~Memory() {
+        release();
+        if (context) SUNContext_Free(&context);
+    }
 
     void release() {
         if (kinsol) KINFree(&kinsol);
@@ -58,7 +61,8 @@ KinsolSession::KinsolSession() : memory_(std::make_unique<Memory>()) {
 
 KinsolSession::~KinsolSession() = default;
 
-std::string KinsolSession::solve(std::span<double> unknowns, int most_iterations, Residual residual, Step step) {
+std::string KinsolSession::solve(std::span<double> unknowns, int most_iterations, Residual residual,
+                                 Step step) {
     Memory& m = *memory_;
     m.residual = std::move(residual);
     m.step = std::move(step);
@@ -74,19 +78,24 @@ std::string KinsolSession::solve(std::span<double> unknowns, int most_iterations
         require(m.kinsol && m.unknowns && m.scale, "SUNDIALS gives no memory");
         KINSetErrHandlerFn(
             m.kinsol,
-            [](int, const char*, const char*, char* text, void* data) { static_cast<Memory*>(data)->message = text; }, &m);
+            [](int, const char*, const char*, char* text, void* data) {
+                static_cast<Memory*>(data)->message = text;
+            },
+            &m);
         KINSetUserData(m.kinsol, &m);
         const auto system = [](N_Vector u, N_Vector f, void* data) {
             Memory& memory = *static_cast<Memory*>(data);
             return guarded(memory.thrown, [&] {
-                const Trial trial = memory.residual({N_VGetArrayPointer(u), memory.size}, {N_VGetArrayPointer(f), memory.size});
+                const Trial trial = memory.residual({N_VGetArrayPointer(u), memory.size},
+                                                    {N_VGetArrayPointer(f), memory.size});
                 return trial == Trial::good ? 0 : 1;
             });
         };
         require(KINInit(m.kinsol, system, m.unknowns) == KIN_SUCCESS, "KINInit fails");
-        // A solver that carries its own matrix. KINSOL 6.4 takes such a solver only as an iterative one (it refuses the
-        // kind "matrix embedded"), and then wants a matrix-vector product, which is never called. The step comes from our
-        // block elimination, already turned into the density step, so KINSOL's linear residuals mean nothing.
+        // A solver that carries its own matrix. KINSOL 6.4 takes such a solver only as an iterative one (it
+        // refuses the kind "matrix embedded"), and then wants a matrix-vector product, which is never called.
+        // The step comes from our block elimination, already turned into the density step, so KINSOL's linear
+        // residuals mean nothing.
         m.linear = SUNLinSolNewEmpty(m.context);
         m.linear->content = &m;
         m.linear->ops->gettype = [](SUNLinearSolver) { return SUNLINEARSOLVER_ITERATIVE; };
@@ -94,14 +103,15 @@ std::string KinsolSession::solve(std::span<double> unknowns, int most_iterations
         m.linear->ops->solve = [](SUNLinearSolver s, SUNMatrix, N_Vector x, N_Vector, realtype) {
             Memory& memory = *static_cast<Memory*>(s->content);
             return guarded(memory.thrown, [&] {
-                return memory.step({N_VGetArrayPointer(x), memory.size}) ? SUNLS_SUCCESS : SUNLS_PACKAGE_FAIL_REC;
+                return memory.step({N_VGetArrayPointer(x), memory.size}) ? SUNLS_SUCCESS
+                                                                         : SUNLS_PACKAGE_FAIL_REC;
             });
         };
         require(KINSetLinearSolver(m.kinsol, m.linear, nullptr) == 0, "KINSetLinearSolver fails");
         KINSetEtaForm(m.kinsol, KIN_ETACONSTANT);
-        KINSetMaxNewtonStep(m.kinsol, 1e12);   // the default cuts the first steps
-        KINSetMaxSetupCalls(m.kinsol, 1);      // a new Jacobian every step
-        KINSetFuncNormTol(m.kinsol, 1e-280);   // reached only when the residual callback reports convergence
+        KINSetMaxNewtonStep(m.kinsol, 1e12);  // the default cuts the first steps
+        KINSetMaxSetupCalls(m.kinsol, 1);     // a new Jacobian every step
+        KINSetFuncNormTol(m.kinsol, 1e-280);  // reached only when the residual callback reports convergence
         KINSetScaledStepTol(m.kinsol, 1e-280);
         KINSetNoInitSetup(m.kinsol, SUNFALSE);
     }
@@ -112,16 +122,23 @@ std::string KinsolSession::solve(std::span<double> unknowns, int most_iterations
     std::copy_n(N_VGetArrayPointer(m.unknowns), m.size, unknowns.begin());
     switch (code) {
         case KIN_SUCCESS:
-        case KIN_INITIAL_GUESS_OK: return "";
-        case KIN_STEP_LT_STPTOL: return "the step is zero";
-        case KIN_MAXITER_REACHED: return "the iterations are used up";
-        case KIN_MXNEWT_5X_EXCEEDED: return "five steps in a row are too long";
+        case KIN_INITIAL_GUESS_OK:
+            return "";
+        case KIN_STEP_LT_STPTOL:
+            return "the step is zero";
+        case KIN_MAXITER_REACHED:
+            return "the iterations are used up";
+        case KIN_MXNEWT_5X_EXCEEDED:
+            return "five steps in a row are too long";
         case KIN_LSOLVE_FAIL:
-        case KIN_LINSOLV_NO_RECOVERY: return "the linear system is singular";
+        case KIN_LINSOLV_NO_RECOVERY:
+            return "the linear system is singular";
         case KIN_SYSFUNC_FAIL:
         case KIN_FIRST_SYSFUNC_ERR:
-        case KIN_REPTD_SYSFUNC_ERR: return "the equations give no finite number";
-        default: return m.message.empty() ? "KINSOL ends with code " + std::to_string(code) : m.message;
+        case KIN_REPTD_SYSFUNC_ERR:
+            return "the equations give no finite number";
+        default:
+            return m.message.empty() ? "KINSOL ends with code " + std::to_string(code) : m.message;
     }
 }
 

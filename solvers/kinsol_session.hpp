@@ -26,8 +26,9 @@ class KinsolSession {
     KinsolSession(const KinsolSession&) = delete;
     KinsolSession& operator=(const KinsolSession&) = delete;
 
-    /// Full Newton steps (KIN_NONE) from `unknowns`, which is updated in place, until the residual is reported as zero.
-    /// Returns KINSOL's own words for how it ended; "" for success. Exceptions of the callbacks pass through.
+    /// Full Newton steps (KIN_NONE) from `unknowns`, which is updated in place, until the residual is
+    /// reported as zero. Returns KINSOL's own words for how it ended; "" for success. Exceptions of the
+    /// callbacks pass through.
     std::string solve(std::span<double> unknowns, int most_iterations, Residual residual, Step step);
 
   private:

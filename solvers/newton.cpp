@@ -18,7 +18,9 @@ struct NewtonSolver::Work {
     TerminalCurrent current;
 };
 
-NewtonSolver::NewtonSolver(const DiscreteSystem& system) : work_(std::make_unique<Work>()) { work_->system = &system; }
+NewtonSolver::NewtonSolver(const DiscreteSystem& system) : work_(std::make_unique<Work>()) {
+    work_->system = &system;
+}
 NewtonSolver::~NewtonSolver() = default;
 NewtonSolver::NewtonSolver(NewtonSolver&&) noexcept = default;
 NewtonSolver& NewtonSolver::operator=(NewtonSolver&&) noexcept = default;
@@ -35,31 +37,36 @@ double log_change(double relative_change) {
     return relative_change < least_change ? deepest_fall : std::log1p(relative_change);
 }
 
-// Whether every density changes by less than this share of itself. Such a step is taken straight, levels and all: the
-// quasi-Fermi level of a floating region then stays as flat as the linear step has it, undisturbed by terms of second
-// order at its edges, which a leakage current many decades below the majority flux could not mend.
+// Whether every density changes by less than this share of itself. Such a step is taken straight, levels and
+// all: the quasi-Fermi level of a floating region then stays as flat as the linear step has it, undisturbed
+// by terms of second order at its edges, which a leakage current many decades below the majority flux could
+// not mend.
 bool is_small(const std::vector<double>& d) {
     for (std::size_t k = 0; k + 2 < d.size(); k += 3)
-        if (std::abs(d[k] - d[k + 1]) > small_change || std::abs(d[k + 2] - d[k]) > small_change) return false;
+        if (std::abs(d[k] - d[k + 1]) > small_change || std::abs(d[k + 2] - d[k]) > small_change)
+            return false;
     return true;
 }
 
 double capped(double change, double cap) {
-    return std::abs(change) <= cap ? change : std::copysign(cap * (1 + std::log(std::abs(change) / cap)), change);
+    return std::abs(change) <= cap ? change
+                                   : std::copysign(cap * (1 + std::log(std::abs(change) / cap)), change);
 }
 
-// A floating region's quasi-Fermi level hangs on a leakage current many decades below the majority flux; its rounding
-// floor is then far above 1e-9. The step is at that floor when it has stopped shrinking for good while every residual is
-// as small as rounding lets it be.
+// A floating region's quasi-Fermi level hangs on a leakage current many decades below the majority flux; its
+// rounding floor is then far above 1e-9. The step is at that floor when it has stopped shrinking for good
+// while every residual is as small as rounding lets it be.
 bool stalled_at_rounding(const NewtonReport& report) {
     constexpr std::size_t span = 4;
     if (report.steps.size() < span + 2 || report.residual > 1e-11) return false;
     const auto from = report.steps.end() - span;
-    const double most = *std::max_element(from, report.steps.end()), least = *std::min_element(from, report.steps.end());
+    const double most = *std::max_element(from, report.steps.end()),
+                 least = *std::min_element(from, report.steps.end());
     return most <= 1e-4 && least > 0.1 * most;
 }
 
-// Turns the matrix of a full system into that of Poisson's equation alone: the carriers' rows ask for no change.
+// Turns the matrix of a full system into that of Poisson's equation alone: the carriers' rows ask for no
+// change.
 void hold_carriers(Equations& equations) {
     BlockTridiagonal& matrix = equations.jacobian;
     for (std::size_t r = 1; r < 3; ++r) {
@@ -73,24 +80,29 @@ void hold_carriers(Equations& equations) {
 }
 
 // Slope of the (convex) energy of Poisson's equation along a change of psi, in units of the sum of its terms.
-double energy_slope(const DiscreteSystem& system, const State& state, std::span<const double> change, double share,
-                    Equations& scratch) {
+double energy_slope(const DiscreteSystem& system, const State& state, std::span<const double> change,
+                    double share, Equations& scratch) {
     State trial = state;
-    for (std::size_t node = 0; node < state.nodes(); ++node) trial.unknowns[3 * node] += share * change[3 * node];
+    for (std::size_t node = 0; node < state.nodes(); ++node)
+        trial.unknowns[3 * node] += share * change[3 * node];
     evaluate(system, trial, scratch);
     double slope = 0;
     for (std::size_t node = 1; node + 1 < system.nodes(); ++node) {
-        const double residual = system.dielectric[node - 1] * (trial.psi(node - 1) - trial.psi(node)) +
-                                system.dielectric[node] * (trial.psi(node + 1) - trial.psi(node)) +
-                                0.5 * system.mesh.width(node - 1) * (scratch.right[node - 1].p - scratch.right[node - 1].n + system.net_right[node - 1]) +
-                                0.5 * system.mesh.width(node) * (scratch.left[node].p - scratch.left[node].n + system.net_left[node]);
+        const double residual =
+            system.dielectric[node - 1] * (trial.psi(node - 1) - trial.psi(node)) +
+            system.dielectric[node] * (trial.psi(node + 1) - trial.psi(node)) +
+            0.5 * system.mesh.width(node - 1) *
+                (scratch.right[node - 1].p - scratch.right[node - 1].n + system.net_right[node - 1]) +
+            0.5 * system.mesh.width(node) *
+                (scratch.left[node].p - scratch.left[node].n + system.net_left[node]);
         slope -= residual * change[3 * node];
     }
     return slope;
 }
 
 // Share of a Newton step at which the energy has stopped falling, 1 where the whole step is good.
-double energy_share(const DiscreteSystem& system, const State& state, std::span<const double> change, Equations& scratch) {
+double energy_share(const DiscreteSystem& system, const State& state, std::span<const double> change,
+                    Equations& scratch) {
     const double at_start = energy_slope(system, state, change, 0, scratch);
     if (!(at_start < 0)) return 1;  // at the rounding floor
     double share = 1;
@@ -135,9 +147,11 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
             report.status = NewtonStatus::converged;
             report.iteration_error = before < INFINITY ? next : last;
             done = true;
-        } else if ((last <= 1e-6 && last > 0.3 * before && report.residual <= 1e-6) || stalled_at_rounding(report)) {
+        } else if ((last <= 1e-6 && last > 0.3 * before && report.residual <= 1e-6) ||
+                   stalled_at_rounding(report)) {
             report.status = NewtonStatus::converged_at_rounding;
-            report.iteration_error = std::max(last, before < INFINITY && report.residual <= 1e-11 ? before : last);
+            report.iteration_error =
+                std::max(last, before < INFINITY && report.residual <= 1e-11 ? before : last);
             done = true;
         }
     };
@@ -147,7 +161,8 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
         if (!assemble(system, trial, work.equations)) return detail::Trial::not_finite;
         report.residual = 0;
         for (std::size_t k = 0; k < size; ++k)
-            if (!options.equilibrium || k % 3 == 0) report.residual = std::max(report.residual, std::abs(work.equations.residual[k]));
+            if (!options.equilibrium || k % 3 == 0)
+                report.residual = std::max(report.residual, std::abs(work.equations.residual[k]));
         double border = 0;
         if (bordered) {
             work.current = terminal_current(system, trial, work.equations);
@@ -177,11 +192,15 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
         if (bordered) {
             std::vector<double>& z = work.by_voltage;
             std::fill(z.begin(), z.end(), 0.0);
-            for (int r = 0; r < 3; ++r) z[static_cast<std::size_t>(r)] = -work.equations.by_contact_voltage[static_cast<std::size_t>(r)];
+            for (int r = 0; r < 3; ++r)
+                z[static_cast<std::size_t>(r)] =
+                    -work.equations.by_contact_voltage[static_cast<std::size_t>(r)];
             work.equations.jacobian.solve(z);
             const double along = terminal_derivative(system, work.equations, work.current, d);
             const double slope = terminal_derivative(system, work.equations, work.current, z);
-            change_of_contact = (applied_voltage - trial.contact_voltage - drop * (work.current.flux + along)) / (1 + drop * slope);
+            change_of_contact =
+                (applied_voltage - trial.contact_voltage - drop * (work.current.flux + along)) /
+                (1 + drop * slope);
             for (std::size_t k = 0; k < size; ++k) d[k] += change_of_contact * z[k];
         }
         const double share = options.equilibrium ? energy_share(system, trial, d, work.scratch) : 1;
@@ -237,7 +256,8 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
     }
     report.message = words;
     if (report.status != NewtonStatus::singular)
-        report.status = words == "the equations give no finite number" ? NewtonStatus::not_finite : NewtonStatus::not_converged;
+        report.status = words == "the equations give no finite number" ? NewtonStatus::not_finite
+                                                                       : NewtonStatus::not_converged;
     return report;
 }
 
@@ -260,7 +280,8 @@ void NewtonSolver::predict(State& state, const Tangent& tangent, double change) 
     const double inner = change * tangent.contact_by_applied;
     const std::vector<double>& w = tangent.by_contact_voltage;
     for (std::size_t node = 0; node < state.nodes(); ++node) {
-        const double psi = inner * w[3 * node], rn = psi - inner * w[3 * node + 1], rp = inner * w[3 * node + 2] - psi;
+        const double psi = inner * w[3 * node], rn = psi - inner * w[3 * node + 1],
+                     rp = inner * w[3 * node + 2] - psi;
         state.unknowns[3 * node] += psi;
         state.unknowns[3 * node + 1] += psi - log_change(rn);
         state.unknowns[3 * node + 2] += psi + log_change(rp);

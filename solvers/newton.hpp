@@ -45,22 +45,26 @@ struct NewtonReport {
 struct NewtonOptions {
     /// A solve with more iterations than this has not converged.
     int most_iterations = 40;
-    /// Cap on the change of psi in one step [kT/q]: fewest iterations over ten devices among 1, 3, 10, 100, none.
+    /// Cap on the change of psi in one step [kT/q]: fewest iterations over ten devices among 1, 3, 10, 100,
+    /// none.
     double cap = 10;
     /// Converged when the step that would come next is predicted below this.
     double tolerance = 1e-10;
-    /// Take a step in which every density changes by less than half straight, levels and all, instead of letting densities
-    /// take it. A little slower, but a floating region's level is then not disturbed by its edges.
+    /// Take a step in which every density changes by less than half straight, levels and all, instead of
+    /// letting densities take it. A little slower, but a floating region's level is then not disturbed by its
+    /// edges.
     bool straight_when_small = false;
-    /// Solve Poisson's equation with both quasi-Fermi potentials held at zero: equilibrium. The step is shortened until
-    /// the energy of the convex problem no longer falls along it, so this converges from any guess.
+    /// Solve Poisson's equation with both quasi-Fermi potentials held at zero: equilibrium. The step is
+    /// shortened until the energy of the convex problem no longer falls along it, so this converges from any
+    /// guess.
     bool equilibrium = false;
 };
 
 /// Solves one system again and again: keeps its workspace and last factorisation.
 ///
-/// Newton's method on psi, phi_n, phi_p, where the *densities* take the Newton step: with r the relative change of a
-/// density, phi moves by (step of psi) - ln(1 + r). Source: derived; why in DEVELOPERS.md, numerics notebook.
+/// Newton's method on psi, phi_n, phi_p, where the *densities* take the Newton step: with r the relative
+/// change of a density, phi moves by (step of psi) - ln(1 + r). Source: derived; why in DEVELOPERS.md,
+/// numerics notebook.
 class NewtonSolver {
   public:
     explicit NewtonSolver(const DiscreteSystem& system);
@@ -71,8 +75,8 @@ class NewtonSolver {
     /// Solves at an applied voltage [kT/q] from `state`, updated only when converged.
     NewtonReport solve(State& state, double applied_voltage, const NewtonOptions& options = {});
 
-    /// Derivative of the unknowns with respect to the contact voltage, from the last factorisation (size 3 nodes),
-    /// and of the contact voltage with respect to the applied one (1 without series resistance).
+    /// Derivative of the unknowns with respect to the contact voltage, from the last factorisation (size 3
+    /// nodes), and of the contact voltage with respect to the applied one (1 without series resistance).
     struct Tangent {
         std::vector<double> by_contact_voltage;
         double contact_by_applied = 1;

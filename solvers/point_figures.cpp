@@ -31,7 +31,8 @@ constexpr double third_mesh_weight = 0.5;
 const PointFigureInfo& info(PointFigure figure) { return table[static_cast<std::size_t>(figure)]; }
 
 PointFigures point_figures(const DiscreteSystem& system, const State& state, const Equations& equations,
-                           const std::vector<Metallurgical>& junctions, std::size_t which, double iteration_error) {
+                           const std::vector<Metallurgical>& junctions, std::size_t which,
+                           double iteration_error) {
     PointFigures point;
     point.values.fill(no_value);
     const auto set = [&](PointFigure figure, std::optional<double> value, double floor) {
@@ -42,27 +43,36 @@ PointFigures point_figures(const DiscreteSystem& system, const State& state, con
     const double q = constants::elementary_charge, kT = system.thermal_voltage;
     const double relative = std::max(iteration_error, 1e-14);
     const TerminalCurrent current = terminal_current(system, state, equations);
-    set(PointFigure::current_density, q * current.flux, q * current.rounding + std::abs(q * current.flux) * relative);
-    set(PointFigure::junction_voltage, state.contact_voltage * kT, std::abs(state.contact_voltage * kT) * 1e-15);
-    // Half-depletion points and fields move by a Debye length per kT/q; 1e-12 of the depth is far below any mesh.
+    set(PointFigure::current_density, q * current.flux,
+        q * current.rounding + std::abs(q * current.flux) * relative);
+    set(PointFigure::junction_voltage, state.contact_voltage * kT,
+        std::abs(state.contact_voltage * kT) * 1e-15);
+    // Half-depletion points and fields move by a Debye length per kT/q; 1e-12 of the depth is far below any
+    // mesh.
     if (!junctions.empty()) {
         const JunctionFigures junction = junction_figures(system, state, equations, junctions, which);
         const double depth = system.mesh.position.back();
-        const auto magnitude = [](std::optional<double> value) { return value ? std::optional(std::abs(*value)) : value; };
+        const auto magnitude = [](std::optional<double> value) {
+            return value ? std::optional(std::abs(*value)) : value;
+        };
         const double field = junction.peak_field ? std::abs(*junction.peak_field) : 0;
         set(PointFigure::peak_field, magnitude(junction.peak_field), field * (relative + 1e-12));
         // A summit's place follows a relative change of the field by that share of the depletion width.
-        const double width = junction.top_edge && junction.bottom_edge ? *junction.bottom_edge - *junction.top_edge : depth;
+        const double width =
+            junction.top_edge && junction.bottom_edge ? *junction.bottom_edge - *junction.top_edge : depth;
         set(PointFigure::peak_field_depth, junction.peak_depth, depth * 1e-15 + width * (relative + 1e-12));
-        set(PointFigure::extrapolated_field, magnitude(junction.extrapolated_field), field * (relative + 1e-12));
+        set(PointFigure::extrapolated_field, magnitude(junction.extrapolated_field),
+            field * (relative + 1e-12));
         set(PointFigure::depletion_top_edge, junction.top_edge, depth * 1e-15);
         set(PointFigure::depletion_bottom_edge, junction.bottom_edge, depth * 1e-15);
         if (junction.top_edge && junction.bottom_edge)
             set(PointFigure::depletion_width, *junction.bottom_edge - *junction.top_edge, depth * 2e-15);
-        if (state.contact_voltage == 0) set(PointFigure::built_in_potential, junction.barrier, kT * (relative + 1e-13));
+        if (state.contact_voltage == 0)
+            set(PointFigure::built_in_potential, junction.barrier, kT * (relative + 1e-13));
         point.state = junction.state;
     }
-    set(PointFigure::contact_potential, std::abs(state.psi(0) - state.psi(system.nodes() - 1)) * kT, kT * 1e-13);
+    set(PointFigure::contact_potential, std::abs(state.psi(0) - state.psi(system.nodes() - 1)) * kT,
+        kT * 1e-13);
     return point;
 }
 
@@ -90,9 +100,12 @@ std::array<double, point_figure_count> relative_errors(const PointFigures& fine,
         if (std::isnan(error[k])) continue;
         const auto figure = static_cast<PointFigure>(k);
         double scale = std::abs(fine.values[k]);
-        const bool is_depth = figure == PointFigure::peak_field_depth || figure == PointFigure::depletion_top_edge ||
+        const bool is_depth = figure == PointFigure::peak_field_depth ||
+                              figure == PointFigure::depletion_top_edge ||
                               figure == PointFigure::depletion_bottom_edge;
-        if (is_depth) scale = std::isnan(fine[PointFigure::depletion_width]) ? INFINITY : fine[PointFigure::depletion_width];
+        if (is_depth)
+            scale = std::isnan(fine[PointFigure::depletion_width]) ? INFINITY
+                                                                   : fine[PointFigure::depletion_width];
         // The place of a flat peak is known to the root of the field's error only; its error bar says so.
         if (figure == PointFigure::junction_voltage || figure == PointFigure::peak_field_depth) continue;
         // At equilibrium the current is zero and has no relative error.

@@ -12,8 +12,16 @@ namespace bandwright {
 
 /// Which number stands where in PointFigures.
 enum class PointFigure {
-    current_density, junction_voltage, peak_field, peak_field_depth, extrapolated_field, depletion_top_edge,
-    depletion_bottom_edge, depletion_width, built_in_potential, contact_potential
+    current_density,
+    junction_voltage,
+    peak_field,
+    peak_field_depth,
+    extrapolated_field,
+    depletion_top_edge,
+    depletion_bottom_edge,
+    depletion_width,
+    built_in_potential,
+    contact_potential
 };
 inline constexpr std::size_t point_figure_count = 10;
 
@@ -34,18 +42,20 @@ struct PointFigures {
     double operator[](PointFigure figure) const { return values[static_cast<std::size_t>(figure)]; }
 };
 
-/// Reads all figures off a state; `which` junction of `junctions` (none when empty). iteration_error: NewtonReport's.
+/// Reads all figures off a state; `which` junction of `junctions` (none when empty). iteration_error:
+/// NewtonReport's.
 PointFigures point_figures(const DiscreteSystem& system, const State& state, const Equations& equations,
-                           const std::vector<Metallurgical>& junctions, std::size_t which, double iteration_error = 0);
+                           const std::vector<Metallurgical>& junctions, std::size_t which,
+                           double iteration_error = 0);
 
-/// Estimated absolute errors of the finest of two or three nested meshes (finest first), [no_value where the figure
-/// has no value]. With a second-order scheme the error of the finest is a third of its difference from the next; the
-/// third mesh guards against two that agree by chance. A safety factor of 2 stands on the estimate, so that a printed
-/// error covers; tests judge coverage and median over 100 structures.
+/// Estimated absolute errors of the finest of two or three nested meshes (finest first), [no_value where the
+/// figure has no value]. With a second-order scheme the error of the finest is a third of its difference from
+/// the next; the third mesh guards against two that agree by chance. A safety factor of 2 stands on the
+/// estimate, so that a printed error covers; tests judge coverage and median over 100 structures.
 std::array<double, point_figure_count> nested_errors(const std::vector<PointFigures>& finest_first);
 
-/// Estimated errors relative to the values (depths relative to the depletion width) of a fine mesh beside its coarsened
-/// one; 0 for figures that are missing, at their floor, or have no relative error.
+/// Estimated errors relative to the values (depths relative to the depletion width) of a fine mesh beside its
+/// coarsened one; 0 for figures that are missing, at their floor, or have no relative error.
 std::array<double, point_figure_count> relative_errors(const PointFigures& fine, const PointFigures& coarse);
 
 }  // namespace bandwright

@@ -12,25 +12,27 @@ namespace bandwright {
 
 namespace {
 
-constexpr double least_step = 1e-4;   // [kT/q]; below it nothing physical changes between two biases
-constexpr double most_step = 2500;    // [kT/q]; steps of this size were seen to need no cut
-constexpr int easy_iterations = 10;   // the step doubles when Newton needs no more than these
+constexpr double least_step = 1e-4;  // [kT/q]; below it nothing physical changes between two biases
+constexpr double most_step = 2500;   // [kT/q]; steps of this size were seen to need no cut
+constexpr int easy_iterations = 10;  // the step doubles when Newton needs no more than these
 
 }  // namespace
 
-std::string describe_failure(const DiscreteSystem& system, double applied_voltage, const NewtonReport& report) {
+std::string describe_failure(const DiscreteSystem& system, double applied_voltage,
+                             const NewtonReport& report) {
     static constexpr const char* names[] = {"the potential", "the electron density", "the hole density"};
     const std::size_t node = report.worst_node;
     const std::size_t cell = std::min(node, system.cells() - 1);
     const double change = report.steps.empty() ? 0 : report.steps.back();
     const std::string remaining = report.worst_unknown == 0 ? fmt::format("{:.2g} kT/q", change)
                                                             : fmt::format("{:.2g} of its value", change);
-    return fmt::format("at {:.6g} V: no convergence after {} Newton steps ({}); the largest remaining change is {} in {} at "
-                       "{:.6g} um (layer \"{}\")",
-                       applied_voltage * system.thermal_voltage, report.iterations,
-                       report.message.empty() ? "the step no longer shrinks" : report.message, remaining,
-                       names[report.worst_unknown], shown(system.mesh.position[node], Unit::length),
-                       system.structure.layers[system.mesh.layer_of_cell[cell]].name);
+    return fmt::format(
+        "at {:.6g} V: no convergence after {} Newton steps ({}); the largest remaining change is {} in {} at "
+        "{:.6g} um (layer \"{}\")",
+        applied_voltage * system.thermal_voltage, report.iterations,
+        report.message.empty() ? "the step no longer shrinks" : report.message, remaining,
+        names[report.worst_unknown], shown(system.mesh.position[node], Unit::length),
+        system.structure.layers[system.mesh.layer_of_cell[cell]].name);
 }
 
 BiasWalk::BiasWalk(const DiscreteSystem& system) : solver_(system) {}
@@ -43,7 +45,8 @@ bool BiasWalk::start_from(State guess, double applied_voltage) {
     options.most_iterations = 100;
     if (applied_voltage == 0) {
         options.equilibrium = true;
-        for (std::size_t node = 0; node < guess.nodes(); ++node) guess.unknowns[3 * node + 1] = guess.unknowns[3 * node + 2] = 0;
+        for (std::size_t node = 0; node < guess.nodes(); ++node)
+            guess.unknowns[3 * node + 1] = guess.unknowns[3 * node + 2] = 0;
     }
     solve(guess, applied_voltage, options);
     fresh_ = applied_voltage != 0;  // the equilibrium solve leaves Poisson's matrix alone in the workspace
@@ -76,12 +79,14 @@ void BiasWalk::accept(State state, double applied_voltage) {
     voltage_ = applied_voltage;
     if (applied_voltage != 0) return;
     // Equilibrium: both quasi-Fermi potentials are zero exactly; rounding of the linear solve is not kept.
-    for (std::size_t node = 0; node < state_.nodes(); ++node) state_.unknowns[3 * node + 1] = state_.unknowns[3 * node + 2] = 0;
+    for (std::size_t node = 0; node < state_.nodes(); ++node)
+        state_.unknowns[3 * node + 1] = state_.unknowns[3 * node + 2] = 0;
     state_.contact_voltage = 0;
     fresh_ = false;
 }
 
-BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux, const std::function<bool()>& should_stop) {
+BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux,
+                                    const std::function<bool()>& should_stop) {
     double step = std::max(step_, std::abs(target - voltage_) < step_ ? step_ : 0.0);
     while (voltage_ != target) {
         if (should_stop && should_stop()) return Arrival::interrupted;
@@ -106,7 +111,8 @@ BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux, const std::
             continue;
         }
         accept(std::move(trial), next);
-        if (report_.iterations <= easy_iterations) step = std::min(most_step, std::max(step, 2 * std::abs(change)));
+        if (report_.iterations <= easy_iterations)
+            step = std::min(most_step, std::max(step, 2 * std::abs(change)));
         step_ = step;
         if (std::abs(flux()) >= most_flux) return Arrival::current_limit;
     }
@@ -115,8 +121,10 @@ BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux, const std::
 
 const Equations& BiasWalk::equations() {
     if (!fresh_) {
-        // After a rejected step the workspace holds another state: bring back this one, with its factorisation.
-        require(assemble(solver_.system(), state_, solver_.equations()), "a converged state gives no finite number");
+        // After a rejected step the workspace holds another state: bring back this one, with its
+        // factorisation.
+        require(assemble(solver_.system(), state_, solver_.equations()),
+                "a converged state gives no finite number");
         solver_.equations().jacobian.factorize();
         fresh_ = true;
     }

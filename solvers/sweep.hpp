@@ -22,8 +22,8 @@ class BiasWalk {
     bool start_from(State guess, double applied_voltage);
 
     enum class Arrival { arrived, stopped, interrupted, current_limit };
-    /// Walks to an applied voltage [kT/q]. Doubles its step when Newton converges easily; halves it and restores the
-    /// last state when it does not; gives up below 1e-4 kT/q, and says where in message().
+    /// Walks to an applied voltage [kT/q]. Doubles its step when Newton converges easily; halves it and
+    /// restores the last state when it does not; gives up below 1e-4 kT/q, and says where in message().
     /// most_flux: |J|/q at which the walk ends on the way [m^-2 s^-1].
     Arrival walk_to(double applied_voltage, double most_flux, const std::function<bool()>& should_stop = {});
 
@@ -56,6 +56,7 @@ class BiasWalk {
 };
 
 /// One sentence on a solve that has not converged: bias, remaining change, its place and layer.
-std::string describe_failure(const DiscreteSystem& system, double applied_voltage, const NewtonReport& report);
+std::string describe_failure(const DiscreteSystem& system, double applied_voltage,
+                             const NewtonReport& report);
 
 }  // namespace bandwright

@@ -21,10 +21,12 @@ std::string name_of(const DopingShape& shape) {
     return std::string(std::visit([](const auto& alternative) { return alternative.name; }, shape));
 }
 
-// Dose of one entry over the part of the stack that it reaches [m^-2], composite Gauss rule on its own breaks.
+// Dose of one entry over the part of the stack that it reaches [m^-2], composite Gauss rule on its own
+// breaks.
 double dose_of(const Structure& structure, const DopingEntry& entry) {
     const std::vector<double> boundaries = layer_boundaries(structure);
-    const double from = entry.layer ? boundaries[*entry.layer] : 0, to = entry.layer ? boundaries[*entry.layer + 1] : boundaries.back();
+    const double from = entry.layer ? boundaries[*entry.layer] : 0,
+                 to = entry.layer ? boundaries[*entry.layer + 1] : boundaries.back();
     std::vector<double> cuts{from, to};
     for (const double x : breakpoints(entry.shape)) cuts.push_back(x);
     for (const Scale& scale : scales(entry.shape, boundaries.back()))
@@ -35,61 +37,89 @@ double dose_of(const Structure& structure, const DopingEntry& entry) {
     for (std::size_t k = 0; k + 1 < cuts.size(); ++k) {
         const double middle = 0.5 * (cuts[k] + cuts[k + 1]), half = 0.5 * (cuts[k + 1] - cuts[k]);
         const double reach = half * std::sqrt(0.6);
-        dose += half / 9 * (5 * concentration(entry.shape, middle - reach) + 8 * concentration(entry.shape, middle) + 5 * concentration(entry.shape, middle + reach));
+        dose += half / 9 *
+                (5 * concentration(entry.shape, middle - reach) + 8 * concentration(entry.shape, middle) +
+                 5 * concentration(entry.shape, middle + reach));
     }
     return dose;
 }
 
 void print_layers(const Structure& structure) {
     const std::vector<double> boundaries = layer_boundaries(structure);
-    TextTable table{{"layer", "material", "from", "to", "net doping, top", "middle", "bottom"}, {"", "", "um", "um", "cm-3", "cm-3", "cm-3"}, {true, true}, {}};
+    TextTable table{{"layer", "material", "from", "to", "net doping, top", "middle", "bottom"},
+                    {"", "", "um", "um", "cm-3", "cm-3", "cm-3"},
+                    {true, true},
+                    {}};
     for (std::size_t k = 0; k < structure.layers.size(); ++k) {
         const double thickness = structure.layers[k].thickness;
         const auto net = [&](double share) {
             const double x = boundaries[k] + thickness * share;
             const double value = doping_at(structure, k, x).net();
-            return value == 0 ? std::string("0") : fmt::format("{}{:.4g}", value > 0 ? "n " : "p ", shown(std::abs(value), Unit::density));
+            return value == 0 ? std::string("0")
+                              : fmt::format("{}{:.4g}", value > 0 ? "n " : "p ",
+                                            shown(std::abs(value), Unit::density));
         };
-        table.rows.push_back({structure.layers[k].name, structure.materials[structure.layers[k].material].name,
-                              fmt::format("{:.6g}", shown(boundaries[k], Unit::length)), fmt::format("{:.6g}", shown(boundaries[k + 1], Unit::length)),
-                              net(1e-9), net(0.5), net(1 - 1e-9)});
+        table.rows.push_back({structure.layers[k].name,
+                              structure.materials[structure.layers[k].material].name,
+                              fmt::format("{:.6g}", shown(boundaries[k], Unit::length)),
+                              fmt::format("{:.6g}", shown(boundaries[k + 1], Unit::length)), net(1e-9),
+                              net(0.5), net(1 - 1e-9)});
     }
     fmt::print("Layers, top to bottom\n{}\n", table.text());
 }
 
 void print_doping(const Structure& structure) {
     if (structure.doping.empty()) return;
-    TextTable table{{"#", "dopant", "kind", "layer", "dose in the stack"}, {"", "", "", "", "cm-2"}, {false, true, true, true}, {}};
+    TextTable table{{"#", "dopant", "kind", "layer", "dose in the stack"},
+                    {"", "", "", "", "cm-2"},
+                    {false, true, true, true},
+                    {}};
     for (std::size_t k = 0; k < structure.doping.size(); ++k) {
         const DopingEntry& entry = structure.doping[k];
         const bool linear = std::holds_alternative<LinearDoping>(entry.shape);
-        table.rows.push_back({std::to_string(k), linear ? "net" : entry.dopant, name_of(entry.shape), entry.layer ? structure.layers[*entry.layer].name : "all",
-                              linear ? "-" : fmt::format("{:.6g}", shown(dose_of(structure, entry), Unit::areal_density))});
+        table.rows.push_back(
+            {std::to_string(k), linear ? "net" : entry.dopant, name_of(entry.shape),
+             entry.layer ? structure.layers[*entry.layer].name : "all",
+             linear ? "-" : fmt::format("{:.6g}", shown(dose_of(structure, entry), Unit::areal_density))});
     }
     fmt::print("Doping\n{}\n", table.text());
 }
 
 void print_junctions(const Results& results) {
-    if (results.junctions.empty()) fmt::print("No junction: the net doping never changes sign.\n\n");
+    if (results.junctions.empty())
+        fmt::print("No junction: the net doping never changes sign.\n\n");
     else {
-        TextTable table{{"depth", "type", "doping gradient", "forward when"}, {"um", "", "cm-4", ""}, {false, true, false, true}, {}};
+        TextTable table{{"depth", "type", "doping gradient", "forward when"},
+                        {"um", "", "cm-4", ""},
+                        {false, true, false, true},
+                        {}};
         for (const JunctionLine& junction : results.junctions)
-            table.rows.push_back({fmt::format("{:.9g}", shown(junction.depth, Unit::length)), junction.p_above ? "p above n" : "n above p",
-                                  std::isnan(junction.gradient) ? "abrupt" : fmt::format("{:.5g}", shown(junction.gradient, Unit::density_gradient)),
-                                  junction.p_above ? "V_top > V_bottom" : "V_top < V_bottom"});
+            table.rows.push_back(
+                {fmt::format("{:.9g}", shown(junction.depth, Unit::length)),
+                 junction.p_above ? "p above n" : "n above p",
+                 std::isnan(junction.gradient)
+                     ? "abrupt"
+                     : fmt::format("{:.5g}", shown(junction.gradient, Unit::density_gradient)),
+                 junction.p_above ? "V_top > V_bottom" : "V_top < V_bottom"});
         fmt::print("Junctions\n{}\n", table.text());
     }
-    TextTable table{{"from", "to", "type", "sheet resistance"}, {"um", "um", "", "ohm per square"}, {false, false, true}, {}};
+    TextTable table{{"from", "to", "type", "sheet resistance"},
+                    {"um", "um", "", "ohm per square"},
+                    {false, false, true},
+                    {}};
     for (const SheetLine& sheet : results.sheet_resistances)
-        table.rows.push_back({fmt::format("{:.6g}", shown(sheet.from, Unit::length)), fmt::format("{:.6g}", shown(sheet.to, Unit::length)), sheet.type,
+        table.rows.push_back({fmt::format("{:.6g}", shown(sheet.from, Unit::length)),
+                              fmt::format("{:.6g}", shown(sheet.to, Unit::length)), sheet.type,
                               std::isnan(sheet.value) ? "-" : fmt::format("{:.6g}", sheet.value)});
     fmt::print("Sheet resistances, flat band\n{}\n", table.text());
 }
 
 void print_models(const Structure& structure) {
     fmt::print("Models in force\n");
-    fmt::print("  statistics: {}; ionization: complete; bandgap narrowing: off; velocity saturation: off; avalanche, tunnelling: off\n",
-               structure.models.statistics == Statistics::boltzmann ? "boltzmann" : "fermi-dirac");
+    fmt::print(
+        "  statistics: {}; ionization: complete; bandgap narrowing: off; velocity saturation: off; "
+        "avalanche, tunnelling: off\n",
+        structure.models.statistics == Statistics::boltzmann ? "boltzmann" : "fermi-dirac");
     std::vector<std::size_t> seen;
     for (const Layer& layer : structure.layers) {
         if (std::find(seen.begin(), seen.end(), layer.material) != seen.end()) continue;
@@ -97,14 +127,19 @@ void print_models(const Structure& structure) {
         const Material& material = structure.materials[layer.material];
         const std::vector<std::string> kinds = recombination_in_force(structure, material);
         const auto own = [&](const char* key) { return material.is_own(key) ? " (yours)" : ""; };
-        fmt::print("  {}: mobility {}, electrons{}, holes{}; recombination {}\n", material.name, mobility_name(mobility_model(structure, material)),
-                   own("electron_mobility"), own("hole_mobility"), kinds.empty() ? "off" : joined(kinds));
+        fmt::print("  {}: mobility {}, electrons{}, holes{}; recombination {}\n", material.name,
+                   mobility_name(mobility_model(structure, material)), own("electron_mobility"),
+                   own("hole_mobility"), kinds.empty() ? "off" : joined(kinds));
     }
     const auto contact = [](const char* where, const Contact& c) {
         std::string text = fmt::format("  {} contact: ohmic", where);
-        if (c.electron_velocity) text += fmt::format(", electrons {:.4g} cm s-1", shown(*c.electron_velocity, Unit::velocity));
-        if (c.hole_velocity) text += fmt::format(", holes {:.4g} cm s-1", shown(*c.hole_velocity, Unit::velocity));
-        if (c.series_resistance > 0) text += fmt::format(", {:.4g} ohm cm2 in series", shown(c.series_resistance, Unit::resistance_area));
+        if (c.electron_velocity)
+            text += fmt::format(", electrons {:.4g} cm s-1", shown(*c.electron_velocity, Unit::velocity));
+        if (c.hole_velocity)
+            text += fmt::format(", holes {:.4g} cm s-1", shown(*c.hole_velocity, Unit::velocity));
+        if (c.series_resistance > 0)
+            text +=
+                fmt::format(", {:.4g} ohm cm2 in series", shown(c.series_resistance, Unit::resistance_area));
         fmt::print("{}\n", text);
     };
     contact("top", structure.top);
@@ -124,11 +159,14 @@ Command inspect_command() {
                     Results results = results_of_input("inspect", options, input);
                     results.status = "complete";
                     for (const Metallurgical& junction : metallurgical_junctions(input.structure))
-                        results.junctions.push_back({junction.depth, junction.p_above, junction.gradient.value_or(no_value)});
+                        results.junctions.push_back(
+                            {junction.depth, junction.p_above, junction.gradient.value_or(no_value)});
                     results.sheet_resistances = sheet_resistances(input.structure);
                     results.warnings = input.structure.warnings;
-                    for (const std::string& remark : remarks(input.structure)) results.warnings.push_back(remark);
-                    for (const std::string& caution : cautions(input.structure, 0)) results.warnings.push_back(caution);
+                    for (const std::string& remark : remarks(input.structure))
+                        results.warnings.push_back(remark);
+                    for (const std::string& caution : cautions(input.structure, 0))
+                        results.warnings.push_back(caution);
                     for (const std::string& warning : results.warnings) warn(warning);
                     if (options.json) {
                         fmt::print("{}\n", summary_json(results));

@@ -28,7 +28,8 @@ std::vector<double> sweep_of(const IvOptions& o) {
     }
     if (o.from.empty() || o.to.empty() || o.step.empty() == o.points.empty())
         refuse("iv: say which biases: --from V --to V with --step V or --points N, or --biases V,V,...");
-    const double from = option_value("--from", o.from, Unit::voltage), to = option_value("--to", o.to, Unit::voltage);
+    const double from = option_value("--from", o.from, Unit::voltage),
+                 to = option_value("--to", o.to, Unit::voltage);
     std::size_t intervals = 0;
     if (!o.step.empty()) {
         const double step = std::abs(option_value("--step", o.step, Unit::voltage));
@@ -48,7 +49,8 @@ std::vector<double> sweep_of(const IvOptions& o) {
         return biases;
     }
     const double points = option_value("--points", o.points, Unit::one);
-    if (!(points >= 2) || points != std::floor(points) || points > 1e6) refuse(fmt::format("iv: --points must be a whole number from 2 to 1000000 (found \"{}\")", o.points));
+    if (!(points >= 2) || points != std::floor(points) || points > 1e6)
+        refuse(fmt::format("iv: --points must be a whole number from 2 to 1000000 (found \"{}\")", o.points));
     intervals = static_cast<std::size_t>(points) - 1;
     std::vector<double> biases;
     for (std::size_t k = 0; k <= intervals; ++k) {
@@ -73,7 +75,8 @@ Command iv_command() {
                 return [own](const CommonOptions& options) {
                     const std::vector<double> biases = sweep_of(*own);
                     const BiasRequest request = request_from(options, biases);
-                    return solve_and_report("iv", options, read_structure(options.file, options.overrides), request);
+                    return solve_and_report("iv", options, read_structure(options.file, options.overrides),
+                                            request);
                 };
             }};
 }

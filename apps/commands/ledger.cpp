@@ -23,12 +23,18 @@ Command ledger_command() {
                         return Exit::done;
                     }
                     if (options.quiet) return Exit::done;
-                    TextTable table{{"parameter", "where", "value", "unit", "status", "source", "valid"}, {}, {true, true, false, true, true, true, true}, {}};
+                    TextTable table{{"parameter", "where", "value", "unit", "status", "source", "valid"},
+                                    {},
+                                    {true, true, false, true, true, true, true},
+                                    {}};
                     for (const LedgerLine& line : results.ledger)
-                        table.rows.push_back({line.parameter, line.where, fmt::format("{:.9g}", shown(line.number.value, line.number.unit)),
-                                              std::string(info(line.number.unit).text), std::string(text(line.number.status)), line.number.source,
-                                              line.number.valid});
-                    fmt::print("{}\n{} K, parameters in force\n\n{}", results.title, results.temperature, table.text());
+                        table.rows.push_back(
+                            {line.parameter, line.where,
+                             fmt::format("{:.9g}", shown(line.number.value, line.number.unit)),
+                             std::string(info(line.number.unit).text), std::string(text(line.number.status)),
+                             line.number.source, line.number.valid});
+                    fmt::print("{}\n{} K, parameters in force\n\n{}", results.title, results.temperature,
+                               table.text());
                     return Exit::done;
                 };
             }};

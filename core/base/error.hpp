@@ -15,7 +15,8 @@ namespace bandwright {
 
 /// One thing that is wrong with an input file or a command line.
 struct Complaint {
-    /// Where: an RFC 6901 JSON Pointer ("/layers/1/thickness"), "line 14, column 5", or empty for the whole file.
+    /// Where: an RFC 6901 JSON Pointer ("/layers/1/thickness"), "line 14, column 5", or empty for the whole
+    /// file.
     std::string where;
     /// What was found, what is allowed, what to do; one sentence without the place.
     std::string text;
@@ -59,7 +60,8 @@ class ContractError : public std::logic_error {
 inline void require(bool condition, std::string_view text,
                     std::source_location place = std::source_location::current()) {
     if (!condition)
-        throw ContractError(std::string(place.file_name()) + ":" + std::to_string(place.line()) + ": " + std::string(text));
+        throw ContractError(std::string(place.file_name()) + ":" + std::to_string(place.line()) + ": " +
+                            std::string(text));
 }
 
 }  // namespace bandwright

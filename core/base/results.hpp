@@ -16,8 +16,8 @@ namespace bandwright {
 /// "No value": written as null in the summary and as _FillValue in the result file.
 inline constexpr double no_value = std::numeric_limits<double>::quiet_NaN();
 
-/// A named result with its estimated absolute numerical error. A value that the mesh does not touch has the error
-/// no_value (null). `state` says why there is no value ("reached through").
+/// A named result with its estimated absolute numerical error. A value that the mesh does not touch has the
+/// error no_value (null). `state` says why there is no value ("reached through").
 struct Figure {
     std::string name;
     double value = no_value;
@@ -55,8 +55,8 @@ struct Variable {
     std::vector<double> values;
 };
 
-/// Everything over depth. Depth is strictly increasing; a boundary depth stands twice (interfaces of layers and doping
-/// steps): the next smaller double before it carries the values above, the boundary those below.
+/// Everything over depth. Depth is strictly increasing; a boundary depth stands twice (interfaces of layers
+/// and doping steps): the next smaller double before it carries the values above, the boundary those below.
 struct Profiles {
     /// [um], because the double before a boundary is taken in the unit that the file carries.
     std::vector<double> depth_um;

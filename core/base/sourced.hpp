@@ -17,11 +17,16 @@ enum class Status { published, from_memory, computed, estimate, yours };
 /// The word used in the ledger: "published", "from memory", "computed", "estimate", "yours".
 constexpr std::string_view text(Status status) {
     switch (status) {
-        case Status::published: return "published";
-        case Status::from_memory: return "from memory";
-        case Status::computed: return "computed";
-        case Status::estimate: return "estimate";
-        case Status::yours: return "yours";
+        case Status::published:
+            return "published";
+        case Status::from_memory:
+            return "from memory";
+        case Status::computed:
+            return "computed";
+        case Status::estimate:
+            return "estimate";
+        case Status::yours:
+            return "yours";
     }
     return "";
 }

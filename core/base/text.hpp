@@ -9,8 +9,8 @@
 
 namespace bandwright {
 
-/// The known name closest to a mistyped one (case-insensitive edit distance, a shared beginning counts for it), or ""
-/// when nothing is near (distance above a third of the length, at least 2 allowed).
+/// The known name closest to a mistyped one (case-insensitive edit distance, a shared beginning counts for
+/// it), or "" when nothing is near (distance above a third of the length, at least 2 allowed).
 std::string nearest_name(std::string_view word, const std::vector<std::string>& known);
 
 /// "a, b, c".

@@ -11,9 +11,32 @@ namespace bandwright {
 /// What a number in memory is. Memory holds SI, with one exception: an energy is kept in electronvolt,
 /// because every formula divides it by kT/q.
 enum class Unit {
-    one, length, area, density, areal_density, density_gradient, energy, voltage, field, temperature, time,
-    mobility, diffusivity, velocity, radiative_coefficient, auger_coefficient, rate, inverse_length,
-    current_density, current, sheet_resistance, resistance_area, capacitance, conductance, charge_density, angle
+    one,
+    length,
+    area,
+    density,
+    areal_density,
+    density_gradient,
+    energy,
+    voltage,
+    field,
+    temperature,
+    time,
+    mobility,
+    diffusivity,
+    velocity,
+    radiative_coefficient,
+    auger_coefficient,
+    rate,
+    inverse_length,
+    current_density,
+    current,
+    sheet_resistance,
+    resistance_area,
+    capacitance,
+    conductance,
+    charge_density,
+    angle
 };
 
 /// Exponents of metre, kilogram, second, ampere, kelvin.

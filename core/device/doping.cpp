@@ -11,7 +11,9 @@ constexpr double ln10 = 2.302585092994045684;
 
 double at(const UniformDoping& shape, double) { return shape.concentration; }
 
-double at(const StepDoping& shape, double x) { return x >= shape.from && x < shape.to ? shape.concentration : 0; }
+double at(const StepDoping& shape, double x) {
+    return x >= shape.from && x < shape.to ? shape.concentration : 0;
+}
 
 double at(const GaussianDoping& shape, double x) {
     const auto bell = [&](double distance) {
@@ -21,10 +23,13 @@ double at(const GaussianDoping& shape, double x) {
     if (shape.peak) return *shape.peak * bell(x - shape.depth);
     // The Gaussian and its mirror image at the surface together hold one full Gaussian over x >= 0.
     constexpr double root_two_pi = 2.5066282746310005024;
-    return shape.dose.value_or(0) / (root_two_pi * shape.straggle) * (bell(x - shape.depth) + bell(x + shape.depth));
+    return shape.dose.value_or(0) / (root_two_pi * shape.straggle) *
+           (bell(x - shape.depth) + bell(x + shape.depth));
 }
 
-double along(Direction direction, double origin, double x) { return direction == Direction::down ? x - origin : origin - x; }
+double along(Direction direction, double origin, double x) {
+    return direction == Direction::down ? x - origin : origin - x;
+}
 
 double at(const ErfcDoping& shape, double x) {
     const double distance = along(shape.direction, shape.origin, x);
@@ -38,7 +43,8 @@ double at(const ExponentialDoping& shape, double x) {
 
 double at(const LinearDoping& shape, double x) { return shape.gradient * (x - shape.zero_depth); }
 
-// Slope at an inner or end point of a run of points, limited so that no piece overshoots [FritschCarlson1980].
+// Slope at an inner or end point of a run of points, limited so that no piece overshoots
+// [FritschCarlson1980].
 double limited_slope(double before, double after, double width_before, double width_after) {
     if (before * after <= 0) return 0;
     const double w1 = 2 * width_after + width_before, w2 = width_after + 2 * width_before;
@@ -55,10 +61,13 @@ double at(const MeasuredDoping& shape, double x) {
     const double h = d[k + 1] - d[k], t = (x - d[k]) / h;
     const double left = value(k), right = value(k + 1);
     if (left == 0 || right == 0) return left + t * (right - left);
-    const auto chord = [&](std::size_t j) { return (std::log10(value(j + 1)) - std::log10(value(j))) / (d[j + 1] - d[j]); };
+    const auto chord = [&](std::size_t j) {
+        return (std::log10(value(j + 1)) - std::log10(value(j))) / (d[j + 1] - d[j]);
+    };
     const auto slope = [&](std::size_t j) {
         const bool has_before = j > 0 && value(j - 1) > 0, has_after = j + 1 < d.size() && value(j + 1) > 0;
-        if (has_before && has_after) return limited_slope(chord(j - 1), chord(j), d[j] - d[j - 1], d[j + 1] - d[j]);
+        if (has_before && has_after)
+            return limited_slope(chord(j - 1), chord(j), d[j] - d[j - 1], d[j + 1] - d[j]);
         return has_before ? chord(j - 1) : chord(j);
     };
     const double a = std::log10(left), b = std::log10(right), t2 = t * t, t3 = t2 * t;
@@ -82,7 +91,9 @@ std::vector<double> breakpoints(const DopingShape& shape) {
         std::vector<double> points{measured->depth.front(), measured->depth.back()};
         // Where the profile starts from or falls to zero it has a kink.
         for (std::size_t k = 1; k + 1 < measured->depth.size(); ++k) {
-            const auto empty = [&](std::size_t j) { return !(measured->concentration[j] > std::max(0.0, measured->floor)); };
+            const auto empty = [&](std::size_t j) {
+                return !(measured->concentration[j] > std::max(0.0, measured->floor));
+            };
             if (empty(k) != empty(k - 1) || empty(k) != empty(k + 1)) points.push_back(measured->depth[k]);
         }
         return points;
@@ -91,14 +102,18 @@ std::vector<double> breakpoints(const DopingShape& shape) {
 }
 
 std::vector<Scale> scales(const DopingShape& shape, double total_thickness) {
-    if (const auto* gaussian = std::get_if<GaussianDoping>(&shape)) return {{gaussian->depth, gaussian->straggle}};
+    if (const auto* gaussian = std::get_if<GaussianDoping>(&shape))
+        return {{gaussian->depth, gaussian->straggle}};
     if (const auto* erfc = std::get_if<ErfcDoping>(&shape)) return {{erfc->origin, erfc->length}};
-    if (const auto* exponential = std::get_if<ExponentialDoping>(&shape)) return {{exponential->origin, exponential->decay_length}};
-    if (const auto* linear = std::get_if<LinearDoping>(&shape)) return {{linear->zero_depth, 0.01 * total_thickness}};
+    if (const auto* exponential = std::get_if<ExponentialDoping>(&shape))
+        return {{exponential->origin, exponential->decay_length}};
+    if (const auto* linear = std::get_if<LinearDoping>(&shape))
+        return {{linear->zero_depth, 0.01 * total_thickness}};
     if (const auto* measured = std::get_if<MeasuredDoping>(&shape)) {
         std::vector<Scale> list;
         for (std::size_t k = 0; k + 1 < measured->depth.size(); ++k)
-            list.push_back({0.5 * (measured->depth[k] + measured->depth[k + 1]), 0.5 * (measured->depth[k + 1] - measured->depth[k])});
+            list.push_back({0.5 * (measured->depth[k] + measured->depth[k + 1]),
+                            0.5 * (measured->depth[k + 1] - measured->depth[k])});
         return list;
     }
     return {};

@@ -26,37 +26,40 @@ struct StepDoping {
     double concentration = 0, from = 0, to = 0;
 };
 
-/// N = peak exp(-(x - depth)^2 / (2 straggle^2)) [m^-3]; with dose [m^-2] in place of peak, that Gaussian plus its
-/// mirror image at the top surface, scaled so that the integral over x >= 0 is the dose.
+/// N = peak exp(-(x - depth)^2 / (2 straggle^2)) [m^-3]; with dose [m^-2] in place of peak, that Gaussian
+/// plus its mirror image at the top surface, scaled so that the integral over x >= 0 is the dose.
 struct GaussianDoping {
     static constexpr std::string_view name = "gaussian";
     std::optional<double> peak, dose;
     double depth = 0, straggle = 0;
 };
 
-/// N = surface erfc(distance / length) [m^-3] on the side of the origin that direction names, zero on the other.
+/// N = surface erfc(distance / length) [m^-3] on the side of the origin that direction names, zero on the
+/// other.
 struct ErfcDoping {
     static constexpr std::string_view name = "erfc";
     double surface = 0, length = 0, origin = 0;
     Direction direction = Direction::down;
 };
 
-/// N = surface exp(-distance / decay_length) [m^-3] on the side of the origin that direction names, zero on the other.
+/// N = surface exp(-distance / decay_length) [m^-3] on the side of the origin that direction names, zero on
+/// the other.
 struct ExponentialDoping {
     static constexpr std::string_view name = "exponential";
     double surface = 0, decay_length = 0, origin = 0;
     Direction direction = Direction::down;
 };
 
-/// Net doping gradient (x - zero_depth), positive values donors [m^-3]; gradient in m^-4 may have either sign.
+/// Net doping gradient (x - zero_depth), positive values donors [m^-3]; gradient in m^-4 may have either
+/// sign.
 struct LinearDoping {
     static constexpr std::string_view name = "linear";
     double gradient = 0, zero_depth = 0;
 };
 
-/// A measured profile: depths [m, increasing] and concentrations [m^-3]. Between two points that are above zero,
-/// monotone cubic interpolation of log10(concentration) without overshoot [FritschCarlson1980]; next to a point at
-/// zero, a straight line; zero beyond the ends.
+/// A measured profile: depths [m, increasing] and concentrations [m^-3]. Between two points that are above
+/// zero, monotone cubic interpolation of log10(concentration) without overshoot [FritschCarlson1980]; next to
+/// a point at zero, a straight line; zero beyond the ends.
 struct MeasuredDoping {
     static constexpr std::string_view name = "measured";
     std::string file;
@@ -64,8 +67,8 @@ struct MeasuredDoping {
     double floor = 0;
 };
 
-using DopingShape = std::variant<UniformDoping, StepDoping, GaussianDoping, ErfcDoping, ExponentialDoping, LinearDoping,
-                                 MeasuredDoping>;
+using DopingShape = std::variant<UniformDoping, StepDoping, GaussianDoping, ErfcDoping, ExponentialDoping,
+                                 LinearDoping, MeasuredDoping>;
 
 /// Concentration of a shape at a depth [m^-3]; LinearDoping gives the signed net doping.
 /// At a jump the value is that of the deeper side. Errors: none.

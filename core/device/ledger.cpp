@@ -10,25 +10,33 @@ namespace bandwright {
 namespace {
 
 void add_constants(Ledger& lines) {
-    const auto add = [&](const char* name, double value, Unit unit, const char* source, Status status, const char* note) {
+    const auto add = [&](const char* name, double value, Unit unit, const char* source, Status status,
+                         const char* note) {
         lines.push_back({name, "constants", {value, unit, source, status, note}});
     };
-    add("elementary_charge (1e-19 C)", constants::elementary_charge * 1e19, Unit::one, "SI2019", Status::published, "exact");
-    add("boltzmann_constant (1e-23 J K-1)", constants::boltzmann * 1e23, Unit::one, "SI2019", Status::published, "exact");
-    add("vacuum_permittivity (1e-12 F m-1)", constants::vacuum_permittivity * 1e12, Unit::one, "CODATA2018", Status::from_memory, "");
+    add("elementary_charge (1e-19 C)", constants::elementary_charge * 1e19, Unit::one, "SI2019",
+        Status::published, "exact");
+    add("boltzmann_constant (1e-23 J K-1)", constants::boltzmann * 1e23, Unit::one, "SI2019",
+        Status::published, "exact");
+    add("vacuum_permittivity (1e-12 F m-1)", constants::vacuum_permittivity * 1e12, Unit::one, "CODATA2018",
+        Status::from_memory, "");
 }
 
 void add_bands(const Structure& structure, const Material& material, Ledger& lines) {
-    for (const char* key : {"relative_permittivity", "electron_affinity", "bandgap", "bandgap_zero_kelvin", "bandgap_slope",
-                            "bandgap_offset", "conduction_band_effective_density", "conduction_band_exponent",
-                            "valence_band_effective_density", "valence_band_exponent"})
+    for (const char* key :
+         {"relative_permittivity", "electron_affinity", "bandgap", "bandgap_zero_kelvin", "bandgap_slope",
+          "bandgap_offset", "conduction_band_effective_density", "conduction_band_exponent",
+          "valence_band_effective_density", "valence_band_exponent"})
         if (material.has(key)) lines.push_back({key, material.name, material.parameters.find(key)->second});
     const Bands bands = bands_at(material, structure.temperature);
     const auto derived = [&](const char* name, double value, Unit unit) {
-        lines.push_back({name, material.name, {value, unit, "from the lines above, at this temperature", Status::computed, ""}});
+        lines.push_back({name,
+                         material.name,
+                         {value, unit, "from the lines above, at this temperature", Status::computed, ""}});
     };
     derived("bandgap at this temperature", bands.bandgap, Unit::energy);
-    derived("intrinsic_density at this temperature", std::exp(0.5 * bands.log_intrinsic_squared), Unit::density);
+    derived("intrinsic_density at this temperature", std::exp(0.5 * bands.log_intrinsic_squared),
+            Unit::density);
 }
 
 void add_recombination(const Structure& structure, const Material& material, Ledger& lines) {
@@ -42,7 +50,10 @@ void add_recombination(const Structure& structure, const Material& material, Led
             if (material.has("trap_level"))
                 add("trap_level");
             else
-                lines.push_back({"trap_level", material.name, {0, Unit::energy, "at the intrinsic level, common practice, no source", Status::estimate, ""}});
+                lines.push_back({"trap_level",
+                                 material.name,
+                                 {0, Unit::energy, "at the intrinsic level, common practice, no source",
+                                  Status::estimate, ""}});
         }
         if (kind == "auger") {
             add("electron_auger");
@@ -58,7 +69,8 @@ void add_contact(const char* where, const Contact& contact, Ledger& lines) {
     };
     if (contact.electron_velocity) yours("electron_velocity", *contact.electron_velocity, Unit::velocity);
     if (contact.hole_velocity) yours("hole_velocity", *contact.hole_velocity, Unit::velocity);
-    if (contact.series_resistance > 0) yours("series_resistance", contact.series_resistance, Unit::resistance_area);
+    if (contact.series_resistance > 0)
+        yours("series_resistance", contact.series_resistance, Unit::resistance_area);
 }
 
 }  // namespace
@@ -73,12 +85,14 @@ Ledger ledger(const Structure& structure) {
         add_bands(structure, material, lines);
         const bool own_n = material.is_own("electron_mobility"), own_p = material.is_own("hole_mobility");
         for (const LedgerLine& line : mobility_ledger(mobility_model(structure, material), material)) {
-            const bool of_electrons = line.parameter.find("electron") != std::string::npos || line.parameter.find("phosphorus") != std::string::npos ||
+            const bool of_electrons = line.parameter.find("electron") != std::string::npos ||
+                                      line.parameter.find("phosphorus") != std::string::npos ||
                                       line.parameter.find("arsenic") != std::string::npos;
             if (of_electrons ? !own_n : !own_p) lines.push_back(line);
         }
         for (const char* key : {"electron_mobility", "hole_mobility"})
-            if (material.is_own(key)) lines.push_back({key, material.name, material.parameters.find(key)->second});
+            if (material.is_own(key))
+                lines.push_back({key, material.name, material.parameters.find(key)->second});
         add_recombination(structure, material, lines);
     }
     add_contact("top contact", structure.top, lines);

@@ -20,8 +20,9 @@ bool Material::is_own(std::string_view key) const {
 
 double bandgap_at(const Material& material, double temperature) {
     if (material.has("bandgap")) return material.value("bandgap");
-    return material.value("bandgap_zero_kelvin") -
-           material.value("bandgap_slope") * temperature * temperature / (temperature + material.value("bandgap_offset"));
+    return material.value("bandgap_zero_kelvin") - material.value("bandgap_slope") * temperature *
+                                                       temperature /
+                                                       (temperature + material.value("bandgap_offset"));
 }
 
 Bands bands_at(const Material& material, double temperature) {

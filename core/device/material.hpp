@@ -26,12 +26,13 @@ struct DopantLevel {
 ///
 /// Names that core understands (unit in memory in brackets):
 ///   relative_permittivity [1], electron_affinity [eV, at 300 K],
-///   bandgap [eV, as it stands] or bandgap_zero_kelvin [eV] + bandgap_slope [eV/K, kept as eV] + bandgap_offset [K]:
+///   bandgap [eV, as it stands] or bandgap_zero_kelvin [eV] + bandgap_slope [eV/K, kept as eV] +
+///   bandgap_offset [K]:
 ///       Varshni E_g = E_0 - slope T^2/(T + offset);
 ///   conduction_band_effective_density, valence_band_effective_density [m^-3, at 300 K] with
 ///   conduction_band_exponent, valence_band_exponent [1]: N(T) = N(300) (T/300)^exponent;
-///   electron_mobility, hole_mobility [m^2/Vs, at 300 K, low doping], electron_mobility_exponent, hole_mobility_exponent;
-///   electron_lifetime, hole_lifetime [s], trap_level [eV from the intrinsic level],
+///   electron_mobility, hole_mobility [m^2/Vs, at 300 K, low doping], electron_mobility_exponent,
+///   hole_mobility_exponent; electron_lifetime, hole_lifetime [s], trap_level [eV from the intrinsic level],
 ///   radiative_coefficient [m^3/s], electron_auger, hole_auger [m^6/s].
 /// A number that the user wrote has Status::yours and is used as it stands at the structure's temperature.
 struct Material {

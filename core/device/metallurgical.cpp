@@ -18,7 +18,8 @@ struct Sample {
 std::vector<double> sample_depths(const Structure& structure, double from, double to, double total) {
     const double length = to - from, inside = 1e-9 * length;
     std::vector<double> depths;
-    for (int k = 0; k <= even_samples; ++k) depths.push_back(from + inside + (length - 2 * inside) * k / even_samples);
+    for (int k = 0; k <= even_samples; ++k)
+        depths.push_back(from + inside + (length - 2 * inside) * k / even_samples);
     for (double share = 1e-3; share > 1e-8; share /= 2) {
         depths.push_back(from + share * length);
         depths.push_back(to - share * length);
@@ -35,7 +36,8 @@ std::vector<double> sample_depths(const Structure& structure, double from, doubl
     return depths;
 }
 
-// Gradient at a zero by a central difference a thousandth of the way to where the doping is 10 % of its surroundings.
+// Gradient at a zero by a central difference a thousandth of the way to where the doping is 10 % of its
+// surroundings.
 std::optional<double> gradient_at(const Structure& structure, std::size_t layer, double x, double reach) {
     const auto net = [&](double position) { return doping_at(structure, layer, position).net(); };
     const double step = 1e-4 * reach;
@@ -54,7 +56,8 @@ std::vector<Metallurgical> metallurgical_junctions(const Structure& structure) {
     std::optional<Sample> before;  // last sample with a net doping
     bool gap = false;              // an undoped stretch lies between `before` and here
     for (std::size_t layer = 0; layer < structure.layers.size(); ++layer) {
-        for (const double x : sample_depths(structure, boundaries[layer], boundaries[layer + 1], boundaries.back())) {
+        for (const double x :
+             sample_depths(structure, boundaries[layer], boundaries[layer + 1], boundaries.back())) {
             const double net = doping_at(structure, layer, x).net();
             if (net == 0) {
                 gap = before.has_value();
@@ -81,9 +84,12 @@ std::vector<Metallurgical> metallurgical_junctions(const Structure& structure) {
                     // A jump is where the profile says it is, to the last digit.
                     for (const DopingEntry& entry : structure.doping)
                         for (const double point : breakpoints(entry.shape))
-                            if (std::abs(point - junction.depth) <= 1e-12 * boundaries.back()) junction.depth = point;
-                    const double reach = std::min(junction.depth - boundaries[layer], boundaries[layer + 1] - junction.depth);
-                    junction.gradient = gradient_at(structure, layer, junction.depth, std::min(reach, x - before->x));
+                            if (std::abs(point - junction.depth) <= 1e-12 * boundaries.back())
+                                junction.depth = point;
+                    const double reach =
+                        std::min(junction.depth - boundaries[layer], boundaries[layer + 1] - junction.depth);
+                    junction.gradient =
+                        gradient_at(structure, layer, junction.depth, std::min(reach, x - before->x));
                 }
                 junctions.push_back(junction);
             }

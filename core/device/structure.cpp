@@ -88,7 +88,9 @@ std::vector<Complaint> complaints(const Structure& structure) {
         const std::string where = "/layers/" + std::to_string(k) + "/material";
         const auto need = [&](const std::string& key) {
             if (!material.has(key))
-                complain(where, fmt::format("{}: no value for {}, and this run needs one; give it under /materials", material.name, key));
+                complain(where,
+                         fmt::format("{}: no value for {}, and this run needs one; give it under /materials",
+                                     material.name, key));
         };
         for (const std::string& key : required_parameters()) {
             if (key == "bandgap" && material.has("bandgap_zero_kelvin")) continue;
@@ -102,7 +104,8 @@ std::vector<Complaint> complaints(const Structure& structure) {
             const auto& known = material.mobility_models;
             const bool both_own = material.is_own("electron_mobility") && material.is_own("hole_mobility");
             if (!both_own && std::find(known.begin(), known.end(), name) == known.end())
-                complain("/models/mobility", fmt::format("\"{}\" has no mobility model \"{}\"; it has {}", material.name, name, joined(known)));
+                complain("/models/mobility", fmt::format("\"{}\" has no mobility model \"{}\"; it has {}",
+                                                         material.name, name, joined(known)));
         }
     }
     for (std::size_t k = 0; k < structure.doping.size(); ++k) {
@@ -116,7 +119,8 @@ std::vector<Complaint> complaints(const Structure& structure) {
             for (const auto& [name, level] : host.dopants) known.push_back(name);
             known.insert(known.end(), {"donor", "acceptor"});
             complain("/doping/" + std::to_string(k) + "/dopant",
-                     fmt::format("\"{}\" is not known as a donor or an acceptor in {}; known there: {}; or give its level under "
+                     fmt::format("\"{}\" is not known as a donor or an acceptor in {}; known there: {}; or "
+                                 "give its level under "
                                  "/materials as dopant_levels",
                                  entry.dopant, host.name, joined(known)));
         }
@@ -126,31 +130,41 @@ std::vector<Complaint> complaints(const Structure& structure) {
 
 std::vector<std::string> remarks(const Structure& structure) {
     std::vector<std::string> list;
-    if (metallurgical_junctions(structure).empty()) list.push_back("the structure has no junction: the net doping never changes sign");
+    if (metallurgical_junctions(structure).empty())
+        list.push_back("the structure has no junction: the net doping never changes sign");
     const std::vector<double> boundaries = layer_boundaries(structure);
     const double thermal = constants::thermal_voltage(structure.temperature);
     const auto net_inside = [&](std::size_t layer, double x) { return doping_at(structure, layer, x).net(); };
     const std::size_t last = structure.layers.size() - 1;
     if (net_inside(0, boundaries[0] + 1e-9 * structure.layers[0].thickness) == 0)
-        list.push_back(fmt::format("layer \"{}\" is undoped at the top contact; the contact is taken as intrinsic", structure.layers[0].name));
+        list.push_back(
+            fmt::format("layer \"{}\" is undoped at the top contact; the contact is taken as intrinsic",
+                        structure.layers[0].name));
     if (net_inside(last, boundaries.back() - 1e-9 * structure.layers[last].thickness) == 0)
-        list.push_back(fmt::format("layer \"{}\" is undoped at the bottom contact; the contact is taken as intrinsic", structure.layers[last].name));
+        list.push_back(
+            fmt::format("layer \"{}\" is undoped at the bottom contact; the contact is taken as intrinsic",
+                        structure.layers[last].name));
     for (std::size_t layer = 0; layer < structure.layers.size(); ++layer) {
         const Material& material = structure.materials[structure.layers[layer].material];
         const double middle = 0.5 * (boundaries[layer] + boundaries[layer + 1]);
         const double density = std::abs(net_inside(layer, middle));
         if (density > 0) {
-            const double debye = std::sqrt(material.value("relative_permittivity") * constants::vacuum_permittivity * thermal /
-                                           (constants::elementary_charge * density));
+            const double debye =
+                std::sqrt(material.value("relative_permittivity") * constants::vacuum_permittivity * thermal /
+                          (constants::elementary_charge * density));
             if (structure.layers[layer].thickness < debye)
-                list.push_back(fmt::format("layer \"{}\" ({:.4g} um) is thinner than its Debye length ({:.4g} um)", structure.layers[layer].name,
-                                           shown(structure.layers[layer].thickness, Unit::length), shown(debye, Unit::length)));
+                list.push_back(fmt::format(
+                    "layer \"{}\" ({:.4g} um) is thinner than its Debye length ({:.4g} um)",
+                    structure.layers[layer].name, shown(structure.layers[layer].thickness, Unit::length),
+                    shown(debye, Unit::length)));
         }
     }
     if (structure.temperature < 250 || structure.temperature > 500)
         for (const Material& material : structure.materials)
             if (!material.based_on.empty()) {
-                list.push_back(fmt::format("{:.4g} K lies outside the 250 to 500 K in which the parameters of {} are meant to hold", structure.temperature, material.based_on));
+                list.push_back(fmt::format(
+                    "{:.4g} K lies outside the 250 to 500 K in which the parameters of {} are meant to hold",
+                    structure.temperature, material.based_on));
                 break;
             }
     if (structure.temperature < 200)

@@ -22,7 +22,8 @@ struct Layer {
     double thickness = 0;
 };
 
-/// Ohmic contact: neutral, in equilibrium, unless the minority carrier recombines at a finite surface velocity [m/s].
+/// Ohmic contact: neutral, in equilibrium, unless the minority carrier recombines at a finite surface
+/// velocity [m/s].
 struct Contact {
     std::optional<double> electron_velocity, hole_velocity;
     /// [ohm m^2], >= 0; lies inside the terminal voltage.
@@ -63,8 +64,8 @@ struct Structure {
     std::vector<std::string> warnings;
 };
 
-/// Depth of the top of each layer and, last, of the bottom of the stack [m], size layers + 1. The sum of thicknesses
-/// is rounded once per layer, the same way everywhere.
+/// Depth of the top of each layer and, last, of the bottom of the stack [m], size layers + 1. The sum of
+/// thicknesses is rounded once per layer, the same way everywhere.
 std::vector<double> layer_boundaries(const Structure& structure);
 
 /// Donor and acceptor concentrations [m^-3].
@@ -79,7 +80,8 @@ struct Doping {
 /// Doping at a depth inside a layer [m^-3]; `layer` says which side a boundary depth belongs to.
 Doping doping_at(const Structure& structure, std::size_t layer, double x);
 
-/// Type of a dopant in a host, or none when the host does not know it. "donor" and "acceptor" name themselves.
+/// Type of a dopant in a host, or none when the host does not know it. "donor" and "acceptor" name
+/// themselves.
 std::optional<DopantType> dopant_type(const Material& host, const std::string& dopant);
 
 /// Mobility model in force in a material.
@@ -98,16 +100,17 @@ struct Metallurgical {
     std::optional<double> gradient;
 };
 
-/// Junctions from top to bottom: zeros of the net doping, by bracketing on the profile and bisection to 1e-12 relative.
-/// A stretch without net doping between a p and an n region counts as one junction at its middle.
+/// Junctions from top to bottom: zeros of the net doping, by bracketing on the profile and bisection to 1e-12
+/// relative. A stretch without net doping between a p and an n region counts as one junction at its middle.
 std::vector<Metallurgical> metallurgical_junctions(const Structure& structure);
 
-/// What makes a structure impossible to run although each value alone is allowed (a missing material parameter, a model
-/// that a material lacks, a dopant unknown to its host). Empty = good. `where` is a JSON Pointer.
+/// What makes a structure impossible to run although each value alone is allowed (a missing material
+/// parameter, a model that a material lacks, a dopant unknown to its host). Empty = good. `where` is a JSON
+/// Pointer.
 std::vector<Complaint> complaints(const Structure& structure);
 
-/// Remarks about a structure that is solved all the same (no junction, undoped contact layer, layer thinner than its
-/// Debye length, temperature outside a model's range).
+/// Remarks about a structure that is solved all the same (no junction, undoped contact layer, layer thinner
+/// than its Debye length, temperature outside a model's range).
 std::vector<std::string> remarks(const Structure& structure);
 
 /// Every physical parameter that a run of this structure would use.

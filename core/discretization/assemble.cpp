@@ -11,7 +11,8 @@ namespace bandwright {
 
 namespace {
 
-// exp of +-600 leaves room for the products of a residual; beyond it a density has no influence on anything else.
+// exp of +-600 leaves room for the products of a residual; beyond it a density has no influence on anything
+// else.
 constexpr double largest_exponent = 600;
 
 EndState end_state(const EndCoefficients& end, double psi, double phi_n, double phi_p, bool fermi_dirac) {
@@ -29,7 +30,8 @@ EndState end_state(const EndCoefficients& end, double psi, double phi_n, double 
     return s;
 }
 
-CellFluxes fluxes(const DiscreteSystem& system, const State& state, std::size_t cell, const EndState& l, const EndState& r) {
+CellFluxes fluxes(const DiscreteSystem& system, const State& state, std::size_t cell, const EndState& l,
+                  const EndState& r) {
     const double change_psi = state.psi(cell + 1) - state.psi(cell);
     // In one material the band terms drop out; graded materials add theirs here.
     const double u_n = change_psi + (r.log_gamma_n - l.log_gamma_n);
@@ -38,7 +40,8 @@ CellFluxes fluxes(const DiscreteSystem& system, const State& state, std::size_t 
     const Bernoulli b_p = u_p == u_n ? b_n : bernoulli(u_p);
     const CellFlux n =
         electron_flux(system.electron_speed[cell], b_n, state.phi_n(cell + 1) - state.phi_n(cell), l.n, r.n);
-    const CellFlux p = hole_flux(system.hole_speed[cell], b_p, state.phi_p(cell + 1) - state.phi_p(cell), l.p, r.p);
+    const CellFlux p =
+        hole_flux(system.hole_speed[cell], b_p, state.phi_p(cell + 1) - state.phi_p(cell), l.p, r.p);
     CellFluxes out;
     out.electron = n.value;
     out.hole = p.value;
@@ -79,11 +82,12 @@ bool evaluate(const DiscreteSystem& system, const State& state, Equations& equat
         } else {
             equations.left[cell] =
                 end_state(end, state.psi(cell), state.phi_n(cell), state.phi_p(cell), system.fermi_dirac);
-            equations.rate_left[cell] =
-                half_rate(end, equations.left[cell], state.phi_n(cell), state.phi_p(cell), system.fermi_dirac);
+            equations.rate_left[cell] = half_rate(end, equations.left[cell], state.phi_n(cell),
+                                                  state.phi_p(cell), system.fermi_dirac);
         }
         const std::size_t next = cell + 1;
-        equations.right[cell] = end_state(end, state.psi(next), state.phi_n(next), state.phi_p(next), system.fermi_dirac);
+        equations.right[cell] =
+            end_state(end, state.psi(next), state.phi_n(next), state.phi_p(next), system.fermi_dirac);
         equations.rate_right[cell] =
             half_rate(end, equations.right[cell], state.phi_n(next), state.phi_p(next), system.fermi_dirac);
         equations.flux[cell] = fluxes(system, state, cell, equations.left[cell], equations.right[cell]);
@@ -123,13 +127,15 @@ bool assemble(const DiscreteSystem& system, const State& state, Equations& equat
         };
         if (node > 0) {
             const std::size_t cell = node - 1;
-            add_half(0.5 * system.mesh.width(cell), equations.right[cell], equations.rate_right[cell], system.net_right[cell]);
+            add_half(0.5 * system.mesh.width(cell), equations.right[cell], equations.rate_right[cell],
+                     system.net_right[cell]);
             balance[0] -= system.dielectric[cell] * (state.psi(node) - state.psi(node - 1));
             balance[1] -= equations.flux[cell].electron;
             balance[2] -= equations.flux[cell].hole;
         }
         if (node + 1 < nodes) {
-            add_half(0.5 * system.mesh.width(node), equations.left[node], equations.rate_left[node], system.net_left[node]);
+            add_half(0.5 * system.mesh.width(node), equations.left[node], equations.rate_left[node],
+                     system.net_left[node]);
             balance[0] += system.dielectric[node] * (state.psi(node + 1) - state.psi(node));
             balance[1] += equations.flux[node].electron;
             balance[2] += equations.flux[node].hole;

@@ -23,19 +23,22 @@ Vector product(const Block& a, const Vector& x) {
     return y;
 }
 
-// A block whose columns belong to the unknowns, in the shift basis: its first column becomes the sum of each row.
+// A block whose columns belong to the unknowns, in the shift basis: its first column becomes the sum of each
+// row.
 Block in_shift_basis(Block block) {
     for (std::size_t i = 0; i < 3; ++i) block[3 * i] += block[3 * i + 1] + block[3 * i + 2];
     return block;
 }
 
-// Inverse by cofactors, rows scaled by their largest entry; false when singular or not finite. A cofactor is a difference
-// of two products: an entry many decades below the others keeps its digits, which exchanges of rows would drown.
+// Inverse by cofactors, rows scaled by their largest entry; false when singular or not finite. A cofactor is
+// a difference of two products: an entry many decades below the others keeps its digits, which exchanges of
+// rows would drown.
 bool invert(const Block& matrix, Block& inverse) {
     Block a;
     Vector scale;
     for (std::size_t i = 0; i < 3; ++i) {
-        const double largest = std::max({std::abs(matrix[3 * i]), std::abs(matrix[3 * i + 1]), std::abs(matrix[3 * i + 2])});
+        const double largest =
+            std::max({std::abs(matrix[3 * i]), std::abs(matrix[3 * i + 1]), std::abs(matrix[3 * i + 2])});
         if (!(largest > 0) || !std::isfinite(largest)) return false;
         scale[i] = 1 / largest;
         for (std::size_t j = 0; j < 3; ++j) a[3 * i + j] = matrix[3 * i + j] * scale[i];
@@ -107,8 +110,8 @@ std::size_t BlockTridiagonal::factorize() {
         }
         coupling_[k] = product(inverse_[k], out);
         for (double& entry : coupling_[k]) entry = -entry;
-        // A common shift passes a cell unchanged but for M: B^-1 left = 1 + B^-1 M on it. Exact where M is small beside the
-        // cell; where it is not, the product itself is.
+        // A common shift passes a cell unchanged but for M: B^-1 left = 1 + B^-1 M on it. Exact where M is
+        // small beside the cell; where it is not, the product itself is.
         const Vector slip = product(inverse_[k], Vector{m[0], m[3], m[6]});
         if (std::max({std::abs(slip[0]), std::abs(slip[1]), std::abs(slip[2])}) < 0.5)
             for (std::size_t i = 0; i < 3; ++i) coupling_[k][3 * i] = slip[i] + (i == 0 ? 1 : 0);
@@ -174,7 +177,8 @@ Block BlockTridiagonal::diagonal_block(std::size_t node) const {
             if (is_set)
                 block[3 * i + j] = i == j ? 1 : 0;
             else
-                block[3 * i + j] = shunt[node][3 * i + j] + (node + 1 < blocks() ? left[node][3 * i + j] : 0) -
+                block[3 * i + j] = shunt[node][3 * i + j] +
+                                   (node + 1 < blocks() ? left[node][3 * i + j] : 0) -
                                    (node > 0 ? right[node - 1][3 * i + j] : 0);
         }
     }

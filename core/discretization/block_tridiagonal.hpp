@@ -1,6 +1,5 @@
-// The linear system of a chain of boxes: three unknowns a node, three fluxes a cell; factorisation and solution.
-// Not for: what the fluxes mean (assemble.hpp).
-// SPDX-License-Identifier: MIT
+// The linear system of a chain of boxes: three unknowns a node, three fluxes a cell; factorisation and
+// solution. Not for: what the fluxes mean (assemble.hpp). SPDX-License-Identifier: MIT
 #pragma once
 
 #include <array>
@@ -18,14 +17,14 @@ using Block = std::array<double, 9>;
 ///     flux of cell k = left_k x_k + right_k x_(k+1);
 /// at the first and last node a row may instead set its unknown.
 ///
-/// Elimination runs from the first node to the last and carries the admittance Y of everything to the left: the flux into
-/// node k is Y_k x_k + f_k. With M = Y - shunt and B = left - M,
+/// Elimination runs from the first node to the last and carries the admittance Y of everything to the left:
+/// the flux into node k is Y_k x_k + f_k. With M = Y - shunt and B = left - M,
 ///     Y_(k+1) = -M B^-1 right,   f_(k+1) = (f + c) + M B^-1 (f + c),
-/// products and sums alone. A plain elimination would form left - left B^-1 left by subtraction and lose an admittance
-/// sixteen decades below the cell's own; a floating region's level hangs on just that. This is the matrix form of the
-/// rule of Grassmann, Taksar and Heyman for Markov chains [Grassmann1985]. A shift of all unknowns alike changes no flux,
-/// so the first unknown is carried as that shift and the other two as differences from it.
-/// Cost: linear in the number of nodes; no allocation after the first call for a size.
+/// products and sums alone. A plain elimination would form left - left B^-1 left by subtraction and lose an
+/// admittance sixteen decades below the cell's own; a floating region's level hangs on just that. This is the
+/// matrix form of the rule of Grassmann, Taksar and Heyman for Markov chains [Grassmann1985]. A shift of all
+/// unknowns alike changes no flux, so the first unknown is carried as that shift and the other two as
+/// differences from it. Cost: linear in the number of nodes; no allocation after the first call for a size.
 class BlockTridiagonal {
   public:
     /// Sets the number of nodes (at least 2); contents become zero, no unknown is set.
@@ -51,9 +50,9 @@ class BlockTridiagonal {
 
   private:
     // In the basis (shift; difference of the second; difference of the third).
-    std::vector<Block> inverse_;    // B^-1
-    std::vector<Block> coupling_;   // x_k = coupling x_(k+1) + B^-1 (f + c)
-    std::vector<Block> admittance_; // M
+    std::vector<Block> inverse_;     // B^-1
+    std::vector<Block> coupling_;    // x_k = coupling x_(k+1) + B^-1 (f + c)
+    std::vector<Block> admittance_;  // M
 };
 
 }  // namespace bandwright

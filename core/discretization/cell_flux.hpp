@@ -1,6 +1,5 @@
-// The Scharfetter-Gummel flux of one carrier through one cell, in the form that does not cancel, with its derivatives.
-// Not for: the loop over cells (assemble.cpp).
-// SPDX-License-Identifier: MIT
+// The Scharfetter-Gummel flux of one carrier through one cell, in the form that does not cancel, with its
+// derivatives. Not for: the loop over cells (assemble.cpp). SPDX-License-Identifier: MIT
 #pragma once
 
 #include "core/discretization/bernoulli.hpp"
@@ -17,9 +16,9 @@ struct CellFlux {
 
 /// Electron current through one cell, divided by q [m^-2 s^-1].
 ///
-/// u = change of (ln n + phi_n) from left to right (for Boltzmann statistics in one material: the change of psi),
-/// a = change of phi_n, both in kT/q. Exact for constant field, mobility and current along the cell. The branch keeps
-/// the argument of expm1 at or below zero: no cancellation, no overflow, zero when a = 0.
+/// u = change of (ln n + phi_n) from left to right (for Boltzmann statistics in one material: the change of
+/// psi), a = change of phi_n, both in kT/q. Exact for constant field, mobility and current along the cell.
+/// The branch keeps the argument of expm1 at or below zero: no cancellation, no overflow, zero when a = 0.
 ///     a >= 0:  (D/h) B(-u) n_left expm1(-a);      a < 0:  -(D/h) B(u) n_right expm1(a)
 /// speed         D/h [m/s], > 0
 /// left, right   densities at the ends [m^-3]

@@ -1,5 +1,5 @@
-// Net recombination of one half cell with its derivatives, free of cancellation. Not for: generation by light.
-// SPDX-License-Identifier: MIT
+// Net recombination of one half cell with its derivatives, free of cancellation. Not for: generation by
+// light. SPDX-License-Identifier: MIT
 #pragma once
 
 #include <cmath>
@@ -12,11 +12,12 @@ namespace bandwright {
 ///
 /// With d = phi_p - phi_n (kT/q) and the excess product Pi = n p (1 - exp(-d)):
 ///     R = Pi / (tau_p (n + n1) + tau_n (p + p1)) + (C_n n + C_p p) Pi + B Pi.
-/// Pi is never formed as n p - nie^2: for d < 0 it is gamma_n gamma_p nie^2 expm1(d), for d >= 0 -n p expm1(-d), so
-/// leakage keeps its digits at any reverse bias.
-/// Source: [ShockleyRead1952], [Hall1952]; forms of the excess product: derived.
-/// Tests: unit/discretization/test_assemble.cpp, contracts/ for the same formulas on dual numbers.
-inline HalfRate half_rate(const EndCoefficients& end, const EndState& s, double phi_n, double phi_p, bool fermi_dirac) {
+/// Pi is never formed as n p - nie^2: for d < 0 it is gamma_n gamma_p nie^2 expm1(d), for d >= 0 -n p
+/// expm1(-d), so leakage keeps its digits at any reverse bias. Source: [ShockleyRead1952], [Hall1952]; forms
+/// of the excess product: derived. Tests: unit/discretization/test_assemble.cpp, contracts/ for the same
+/// formulas on dual numbers.
+inline HalfRate half_rate(const EndCoefficients& end, const EndState& s, double phi_n, double phi_p,
+                          bool fermi_dirac) {
     const double d = phi_p - phi_n;
     const double e = std::expm1(-std::abs(d));
     const double np = s.n * s.p;
@@ -47,14 +48,16 @@ inline HalfRate half_rate(const EndCoefficients& end, const EndState& s, double 
             dp1 = p1 * (s.ratio_p - 1);
         }
         const double inverse = 1 / (end.tau_p * (s.n + n1) + end.tau_n * (s.p + p1));
-        const double by_n = -inverse * inverse * end.tau_p * (dn + dn1), by_p = -inverse * inverse * end.tau_n * (dp + dp1);
+        const double by_n = -inverse * inverse * end.tau_p * (dn + dn1),
+                     by_p = -inverse * inverse * end.tau_n * (dp + dp1);
         factor += inverse;
         factor_by_psi += by_n - by_p;
         factor_by_phi_n -= by_n;
         factor_by_phi_p += by_p;
     }
     return {product * factor, product_by_psi * factor + product * factor_by_psi,
-            product_by_phi_n * factor + product * factor_by_phi_n, product_by_phi_p * factor + product * factor_by_phi_p};
+            product_by_phi_n * factor + product * factor_by_phi_n,
+            product_by_phi_p * factor + product * factor_by_phi_p};
 }
 
 }  // namespace bandwright

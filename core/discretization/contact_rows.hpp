@@ -11,13 +11,13 @@ namespace bandwright {
 
 /// Replaces the rows of a contact node.
 ///
-/// psi = contact voltage + neutral psi; a carrier without surface velocity: phi = contact voltage. A minority carrier
-/// with surface velocity S keeps its box equation, closed by the flux into the metal S (c - c_0), c_0 the equilibrium
-/// density: J_n . outward = -q S (n - n_0), J_p . outward = +q S (p - p_0), written with expm1 so that the excess does
-/// not cancel. Source: [SzeNg2007] (surface recombination velocity).
-/// balance: the three balances of the node, changed in place.
-inline void apply_contact(const ContactCoefficients& contact, const State& state, std::size_t node, bool is_top,
-                          Equations& equations, double (&balance)[3]) {
+/// psi = contact voltage + neutral psi; a carrier without surface velocity: phi = contact voltage. A minority
+/// carrier with surface velocity S keeps its box equation, closed by the flux into the metal S (c - c_0), c_0
+/// the equilibrium density: J_n . outward = -q S (n - n_0), J_p . outward = +q S (p - p_0), written with
+/// expm1 so that the excess does not cancel. Source: [SzeNg2007] (surface recombination velocity). balance:
+/// the three balances of the node, changed in place.
+inline void apply_contact(const ContactCoefficients& contact, const State& state, std::size_t node,
+                          bool is_top, Equations& equations, double (&balance)[3]) {
     BlockTridiagonal& matrix = equations.jacobian;
     Block& shunt = matrix.shunt[node];
     std::array<bool, 3>& is_set = is_top ? matrix.first_is_set : matrix.last_is_set;

@@ -50,10 +50,12 @@ struct EndDoping {
     double left, right;
 };
 
-// The doping of a cell's ends: the values there, both moved by the same amount so that the cell keeps its exact dose.
+// The doping of a cell's ends: the values there, both moved by the same amount so that the cell keeps its
+// exact dose.
 //
-// The mean of a half cell instead would differ from the end value by a quarter of the change across the cell, and next to
-// a wider cell by a different amount: in a graded neutral region that shows as charge which is not there.
+// The mean of a half cell instead would differ from the end value by a quarter of the change across the cell,
+// and next to a wider cell by a different amount: in a graded neutral region that shows as charge which is
+// not there.
 EndDoping end_doping(const Structure& structure, std::size_t layer, double from, double to) {
     const auto net = [&](double x) { return doping_at(structure, layer, x).net(); };
     const auto mean = [&](double a, double b) {  // three-point Gauss rule
@@ -73,13 +75,15 @@ ContactCoefficients contact_coefficients(const DiscreteSystem& system, const Con
     const Structure& structure = system.structure;
     const std::size_t cell = is_top ? 0 : system.cells() - 1;
     const EndCoefficients& end = system.of_cell(cell);
-    const Material& material = structure.materials[structure.layers[system.mesh.layer_of_cell[cell]].material];
-    // The doping at the contact itself (a half cell's mean would be first order); the bottom end belongs to the last layer.
+    const Material& material =
+        structure.materials[structure.layers[system.mesh.layer_of_cell[cell]].material];
+    // The doping at the contact itself (a half cell's mean would be first order); the bottom end belongs to
+    // the last layer.
     const double bottom = system.mesh.position.back();
     const double x = is_top ? system.mesh.position.front() : std::nextafter(bottom, 0.0);
     const double net = doping_at(structure, system.mesh.layer_of_cell[cell], x).net();
-    const double psi = neutral_potential(bands_at(material, structure.temperature), structure.models.statistics,
-                                         structure.temperature, net) /
+    const double psi = neutral_potential(bands_at(material, structure.temperature),
+                                         structure.models.statistics, structure.temperature, net) /
                        system.thermal_voltage;
     ContactCoefficients result{};
     result.neutral_psi = psi;
@@ -100,11 +104,12 @@ DiscreteSystem discretize(const Structure& structure, Mesh mesh) {
     system.thermal_voltage = constants::thermal_voltage(structure.temperature);
     system.fermi_dirac = structure.models.statistics == Statistics::fermi_dirac;
     system.series_resistance = structure.top.series_resistance + structure.bottom.series_resistance;
-    for (const Material& material : structure.materials) system.materials.push_back(end_coefficients(structure, material));
+    for (const Material& material : structure.materials)
+        system.materials.push_back(end_coefficients(structure, material));
     const std::size_t cells = system.cells();
     system.material_of_cell.resize(cells);
-    for (std::vector<double>* values : {&system.dielectric, &system.electron_speed, &system.hole_speed, &system.net_left,
-                                        &system.net_right})
+    for (std::vector<double>* values : {&system.dielectric, &system.electron_speed, &system.hole_speed,
+                                        &system.net_left, &system.net_right})
         values->resize(cells);
     for (std::size_t cell = 0; cell < cells; ++cell) {
         const std::size_t layer = system.mesh.layer_of_cell[cell];
@@ -115,8 +120,9 @@ DiscreteSystem discretize(const Structure& structure, Mesh mesh) {
         const EndDoping ends = end_doping(structure, layer, from, to);
         system.net_left[cell] = ends.left;
         system.net_right[cell] = ends.right;
-        system.dielectric[cell] = system.of_cell(cell).relative_permittivity * constants::vacuum_permittivity *
-                                  system.thermal_voltage / (constants::elementary_charge * h);
+        system.dielectric[cell] = system.of_cell(cell).relative_permittivity *
+                                  constants::vacuum_permittivity * system.thermal_voltage /
+                                  (constants::elementary_charge * h);
         const MobilityModel model = mobility_model(structure, material);
         const Doping left = doping_at(structure, layer, from + 0.2113248654051871 * h);
         const Doping right = doping_at(structure, layer, to - 0.2113248654051871 * h);
@@ -141,10 +147,12 @@ State neutral_state(const DiscreteSystem& system) {
     for (std::size_t node = 0; node < system.nodes(); ++node) {
         const std::size_t cell = node < system.cells() ? node : node - 1;
         const double net = node < system.cells() ? system.net_left[cell] : system.net_right[cell];
-        const Material& material = structure.materials[structure.layers[system.mesh.layer_of_cell[cell]].material];
-        state.unknowns[3 * node] = neutral_potential(bands_at(material, structure.temperature), structure.models.statistics,
-                                                     structure.temperature, net) /
-                                   system.thermal_voltage;
+        const Material& material =
+            structure.materials[structure.layers[system.mesh.layer_of_cell[cell]].material];
+        state.unknowns[3 * node] =
+            neutral_potential(bands_at(material, structure.temperature), structure.models.statistics,
+                              structure.temperature, net) /
+            system.thermal_voltage;
     }
     return state;
 }

@@ -53,7 +53,8 @@ struct DiscreteSystem {
     std::vector<std::size_t> material_of_cell;
     /// eps kT/q / (q h) [m^-2], D_n/h and D_p/h [m/s], size n - 1.
     std::vector<double> dielectric, electron_speed, hole_speed;
-    /// Net doping of the left and the right end of each cell [m^-3], size n - 1; their mean times the width is the cell's dose.
+    /// Net doping of the left and the right end of each cell [m^-3], size n - 1; their mean times the width
+    /// is the cell's dose.
     std::vector<double> net_left, net_right;
     ContactCoefficients top, bottom;
 
@@ -62,9 +63,9 @@ struct DiscreteSystem {
     const EndCoefficients& of_cell(std::size_t cell) const { return materials[material_of_cell[cell]]; }
 };
 
-/// Puts a structure on a mesh. Each cell keeps its dose, integrated by the three-point Gauss rule on both halves (exact to
-/// fifth degree); mobilities are evaluated at both ends of a cell from inside it and averaged.
-/// Errors: ContractError for a structure with complaints or a broken mesh.
+/// Puts a structure on a mesh. Each cell keeps its dose, integrated by the three-point Gauss rule on both
+/// halves (exact to fifth degree); mobilities are evaluated at both ends of a cell from inside it and
+/// averaged. Errors: ContractError for a structure with complaints or a broken mesh.
 DiscreteSystem discretize(const Structure& structure, Mesh mesh);
 
 /// First guess: local neutrality at every node, zero quasi-Fermi potentials.

@@ -10,8 +10,8 @@
 namespace bandwright {
 
 /// The unknowns of a node, in units of kT/q: electrostatic potential psi and the two quasi-Fermi potentials.
-/// All three are continuous everywhere, across material steps too. The zero of all three is the Fermi level of the
-/// bottom contact (inside its series resistance); psi is the vacuum level with its sign turned.
+/// All three are continuous everywhere, across material steps too. The zero of all three is the Fermi level
+/// of the bottom contact (inside its series resistance); psi is the vacuum level with its sign turned.
 struct State {
     /// psi, phi_n, phi_p of node 0, then node 1, ...; size 3 n nodes.
     std::vector<double> unknowns;

@@ -11,9 +11,9 @@ namespace bandwright {
 
 namespace {
 
-constexpr double neutral_enough = 1e-3;  // |charge| / |doping| at which a region counts as neutral
+constexpr double neutral_enough = 1e-3;   // |charge| / |doping| at which a region counts as neutral
 constexpr double neutral_at_most = 0.05;  // |charge| / |doping| above which a place is not neutral
-constexpr double few_carriers = 0.05;      // carriers / doping below which a side counts as depleted
+constexpr double few_carriers = 0.05;     // carriers / doping below which a side counts as depleted
 
 /// What the search functions below share.
 struct View {
@@ -40,14 +40,16 @@ double crossing(double from, double to, const Function& f) {
     return 0.5 * (from + to);
 }
 
-// Cubic in a cell through end values and end slopes: the interpolation error then lies far below the solution's.
+// Cubic in a cell through end values and end slopes: the interpolation error then lies far below the
+// solution's.
 double hermite(double t, double h, double left, double left_slope, double right, double right_slope) {
     const double t2 = t * t, t3 = t2 * t;
     return (2 * t3 - 3 * t2 + 1) * left + (t3 - 2 * t2 + t) * h * left_slope + (3 * t2 - 2 * t3) * right +
            (t3 - t2) * h * right_slope;
 }
 
-// ln of the majority density inside a cell. Slopes: ratio * (d psi/dx - d phi/dx), with phi straight in the cell.
+// ln of the majority density inside a cell. Slopes: ratio * (d psi/dx - d phi/dx), with phi straight in the
+// cell.
 double log_density(const View& v, std::size_t cell, bool electrons, double position) {
     const double h = v.system.mesh.width(cell), t = (position - v.x(cell)) / h;
     const EndState &l = v.equations.left[cell], &r = v.equations.right[cell];
@@ -65,7 +67,8 @@ double log_density(const View& v, std::size_t cell, bool electrons, double posit
 }
 
 // Depth where n = p nearest to the metallurgical junction, with n/p growing towards the n side.
-std::optional<std::pair<std::size_t, double>> electrical_junction(const View& v, const Metallurgical& junction) {
+std::optional<std::pair<std::size_t, double>> electrical_junction(const View& v,
+                                                                  const Metallurgical& junction) {
     std::optional<std::pair<std::size_t, double>> best;
     for (std::size_t cell = 0; cell < v.system.cells(); ++cell) {
         const EndState &l = v.equations.left[cell], &r = v.equations.right[cell];
@@ -75,7 +78,8 @@ std::optional<std::pair<std::size_t, double>> electrical_junction(const View& v,
         const double depth = crossing(v.x(cell), v.x(cell + 1), [&](double position) {
             return log_density(v, cell, true, position) - log_density(v, cell, false, position);
         });
-        if (!best || std::abs(depth - junction.depth) < std::abs(best->second - junction.depth)) best = {cell, depth};
+        if (!best || std::abs(depth - junction.depth) < std::abs(best->second - junction.depth))
+            best = {cell, depth};
     }
     return best;
 }
@@ -83,8 +87,8 @@ std::optional<std::pair<std::size_t, double>> electrical_junction(const View& v,
 // Half-depletion point on one side of the electrical junction.
 std::optional<double> edge(const View& v, std::size_t start_cell, double start, bool downwards, bool n_side) {
     const double sign = n_side ? 1 : -1;
-    // Next to the metallurgical junction the doping vanishes and the share of carriers is large without meaning: only a
-    // crossing from below counts.
+    // Next to the metallurgical junction the doping vanishes and the share of carriers is large without
+    // meaning: only a crossing from below counts.
     bool seen_below = false;
     std::optional<double> start_of_side;  // where this side's doping begins
     const auto excess = [&](std::size_t cell, double position) -> std::optional<double> {
@@ -110,13 +114,16 @@ std::optional<double> edge(const View& v, std::size_t start_cell, double start, 
                 return value ? *value : -1.0;
             });
         seen_below = seen_below || (b && *b < 0);
-        // A side that is nowhere half depleted (carriers spill from it into an intrinsic layer) begins at its edge.
-        if (downwards ? cell + 1 >= v.system.cells() : cell == 0) return seen_below ? std::nullopt : start_of_side;
+        // A side that is nowhere half depleted (carriers spill from it into an intrinsic layer) begins at its
+        // edge.
+        if (downwards ? cell + 1 >= v.system.cells() : cell == 0)
+            return seen_below ? std::nullopt : start_of_side;
         cell = downwards ? cell + 1 : cell - 1;
     }
 }
 
-// The largest |E| within the junction's space charge: from the start outward to the nearest minimum on each side.
+// The largest |E| within the junction's space charge: from the start outward to the nearest minimum on each
+// side.
 void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) {
     const auto size = [&](std::size_t node) { return std::abs(v.displacement[node]); };
     const bool positive = v.displacement[start_node] > 0;
@@ -127,7 +134,8 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
         while (downwards ? node + 1 < v.system.nodes() : node > 0) {
             node = downwards ? node + 1 : node - 1;
             if ((v.displacement[node] > 0) != positive) break;
-            if (size(node) > 1.01 * least && least < 0.9 * most) break;  // past a minimum: another space charge
+            if (size(node) > 1.01 * least && least < 0.9 * most)
+                break;  // past a minimum: another space charge
             least = std::min(least, size(node));
             if (size(node) > most) most = least = size(node);
             if (size(node) > size(best)) best = node;
@@ -142,11 +150,13 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
         const double left_slope = sign * charge_left(v.system, v.equations, cell);
         const double right_slope = sign * charge_right(v.system, v.equations, cell);
         if (!(left_slope > 0 && right_slope < 0)) continue;
-        const double h = v.system.mesh.width(cell), l = sign * v.displacement[cell], r = sign * v.displacement[cell + 1];
+        const double h = v.system.mesh.width(cell), l = sign * v.displacement[cell],
+                     r = sign * v.displacement[cell + 1];
         double from = 0, to = 1;
         for (int step = 0; step < 50; ++step) {
             const double t = 0.5 * (from + to), t2 = t * t;
-            const double slope = 6 * (t - t2) * (r - l) + h * ((3 * t2 - 4 * t + 1) * left_slope + (3 * t2 - 2 * t) * right_slope);
+            const double slope = 6 * (t - t2) * (r - l) +
+                                 h * ((3 * t2 - 4 * t + 1) * left_slope + (3 * t2 - 2 * t) * right_slope);
             (slope > 0 ? from : to) = t;
         }
         const double summit = hermite(0.5 * (from + to), h, l, left_slope, r, right_slope);
@@ -172,13 +182,16 @@ double dose_between(const View& v, std::size_t from, std::size_t to) {
 struct Region {
     std::size_t first, last;
 };
-Region region_beside(const View& v, const std::vector<Metallurgical>& junctions, std::size_t which, bool below) {
+Region region_beside(const View& v, const std::vector<Metallurgical>& junctions, std::size_t which,
+                     bool below) {
     const auto node_at = [&](double depth) {
         const auto& x = v.system.mesh.position;
         return static_cast<std::size_t>(std::lower_bound(x.begin(), x.end(), depth - 1e-15) - x.begin());
     };
     const std::size_t own = std::min(node_at(junctions[which].depth), v.system.nodes() - 1);
-    if (below) return {own, which + 1 < junctions.size() ? node_at(junctions[which + 1].depth) : v.system.nodes() - 1};
+    if (below)
+        return {own,
+                which + 1 < junctions.size() ? node_at(junctions[which + 1].depth) : v.system.nodes() - 1};
     return {which > 0 ? node_at(junctions[which - 1].depth) : 0, own};
 }
 
@@ -188,7 +201,8 @@ void find_extrapolated(const View& v, const std::vector<Metallurgical>& junction
     Region regions[2] = {region_beside(v, junctions, which, false), region_beside(v, junctions, which, true)};
     for (int side = 0; side < 2; ++side)
         for (std::size_t cell = regions[side].first; cell < regions[side].last; ++cell)
-            heaviest[side] = std::max({heaviest[side], std::abs(v.system.net_left[cell]), std::abs(v.system.net_right[cell])});
+            heaviest[side] = std::max(
+                {heaviest[side], std::abs(v.system.net_left[cell]), std::abs(v.system.net_right[cell])});
     const int light = heaviest[0] < heaviest[1] ? 0 : 1;
     const Region region = regions[light];
     if (region.last <= region.first) return;
@@ -239,12 +253,14 @@ BoxNeutrality box_neutrality(const View& v, std::size_t node) {
 double neutral_potential_at(const View& v, std::size_t cell, double position) {
     const Structure& s = v.system.structure;
     const Material& material = s.materials[s.layers[v.system.mesh.layer_of_cell[cell]].material];
-    return neutral_potential(bands_at(material, s.temperature), s.models.statistics, s.temperature, v.net_at(cell, position));
+    return neutral_potential(bands_at(material, s.temperature), s.models.statistics, s.temperature,
+                             v.net_at(cell, position));
 }
 
-// Neutral potential [V] of the nearest neutral region outward from an edge: at the first place where the charge falls below a
-// thousandth of the doping or, in a steep profile that is nowhere so neutral, where its share is least. The place moves
-// smoothly with the solution; the first zero of the charge would not, because in a graded region zeros come and go.
+// Neutral potential [V] of the nearest neutral region outward from an edge: at the first place where the
+// charge falls below a thousandth of the doping or, in a steep profile that is nowhere so neutral, where its
+// share is least. The place moves smoothly with the solution; the first zero of the charge would not, because
+// in a graded region zeros come and go.
 std::optional<double> neutral_psi_beyond(const View& v, double edge_depth, Region region, bool below) {
     std::optional<std::size_t> best;
     double least = neutral_at_most, before_ratio = 0;
@@ -252,13 +268,15 @@ std::optional<double> neutral_psi_beyond(const View& v, double edge_depth, Regio
     for (std::size_t step = 0; step <= region.last - region.first; ++step) {
         const std::size_t node = below ? region.first + step : region.last - step;
         if (below ? v.x(node) < edge_depth : v.x(node) > edge_depth) continue;
-        if (node == 0 || node + 1 == v.system.nodes() || node == region.first || node == region.last) continue;
+        if (node == 0 || node + 1 == v.system.nodes() || node == region.first || node == region.last)
+            continue;
         const double ratio = box_neutrality(v, node).ratio();
         const std::size_t cell = below ? node - 1 : node;  // on the junction's side of the node
         if (ratio <= neutral_enough) {
             double place = below ? std::max(edge_depth, v.x(node - 1)) : std::min(edge_depth, v.x(node + 1));
             if (before) {
-                const double share = std::log(before_ratio / neutral_enough) / std::log(before_ratio / std::max(ratio, 1e-300));
+                const double share = std::log(before_ratio / neutral_enough) /
+                                     std::log(before_ratio / std::max(ratio, 1e-300));
                 place = v.x(*before) + share * (v.x(node) - v.x(*before));
             }
             return neutral_potential_at(v, cell, place);
@@ -277,10 +295,12 @@ std::optional<double> neutral_psi_beyond(const View& v, double edge_depth, Regio
     // Least beside a contact means least at the contact, which is neutral by its own equation.
     if (node == 1) return v.state.psi(0) * v.system.thermal_voltage;
     if (node + 2 == v.system.nodes()) return v.state.psi(node + 1) * v.system.thermal_voltage;
-    // The least share between nodes: the parabola through three logarithms, so that the place does not jump with nodes.
+    // The least share between nodes: the parabola through three logarithms, so that the place does not jump
+    // with nodes.
     const double x0 = v.x(node - 1) - v.x(node), x2 = v.x(node + 1) - v.x(node);
     const double y1 = std::log(box_neutrality(v, node).ratio());
-    const double y0 = std::log(box_neutrality(v, node - 1).ratio()) - y1, y2 = std::log(box_neutrality(v, node + 1).ratio()) - y1;
+    const double y0 = std::log(box_neutrality(v, node - 1).ratio()) - y1,
+                 y2 = std::log(box_neutrality(v, node + 1).ratio()) - y1;
     const double curvature = (y2 / x2 - y0 / x0) / (x2 - x0), slope = y0 / x0 - curvature * x0;
     const double offset = std::clamp(curvature > 0 ? -slope / (2 * curvature) : 0, 0.5 * x0, 0.5 * x2);
     return neutral_potential_at(v, offset < 0 ? node - 1 : node, v.x(node) + offset);
@@ -294,9 +314,9 @@ JunctionFigures junction_figures(const DiscreteSystem& system, const State& stat
     const Metallurgical& junction = junctions.at(which);
     JunctionFigures figures;
     const auto& x = system.mesh.position;
-    const std::size_t at =
-        std::min(static_cast<std::size_t>(std::lower_bound(x.begin(), x.end(), junction.depth - 1e-15) - x.begin()),
-                 system.nodes() - 1);
+    const std::size_t at = std::min(
+        static_cast<std::size_t>(std::lower_bound(x.begin(), x.end(), junction.depth - 1e-15) - x.begin()),
+        system.nodes() - 1);
     find_peak(v, at, figures);
     find_extrapolated(v, junctions, which, figures);
     const auto electrical = electrical_junction(v, junction);
@@ -308,8 +328,10 @@ JunctionFigures junction_figures(const DiscreteSystem& system, const State& stat
     figures.bottom_edge = edge(v, electrical->first, electrical->second, true, junction.p_above);
     if (!figures.top_edge || !figures.bottom_edge) figures.state = "reached through";
     if (figures.top_edge && figures.bottom_edge) {
-        const auto above = neutral_psi_beyond(v, *figures.top_edge, region_beside(v, junctions, which, false), false);
-        const auto below = neutral_psi_beyond(v, *figures.bottom_edge, region_beside(v, junctions, which, true), true);
+        const auto above =
+            neutral_psi_beyond(v, *figures.top_edge, region_beside(v, junctions, which, false), false);
+        const auto below =
+            neutral_psi_beyond(v, *figures.bottom_edge, region_beside(v, junctions, which, true), true);
         if (above && below) figures.barrier = junction.p_above ? *below - *above : *above - *below;
     }
     return figures;
@@ -321,13 +343,16 @@ std::size_t most_biased_junction(const DiscreteSystem& system, const std::vector
     double most = -1;
     const auto& x = system.mesh.position;
     const auto node_at = [&](double depth) {
-        return std::min(static_cast<std::size_t>(std::lower_bound(x.begin(), x.end(), depth) - x.begin()), system.nodes() - 1);
+        return std::min(static_cast<std::size_t>(std::lower_bound(x.begin(), x.end(), depth) - x.begin()),
+                        system.nodes() - 1);
     };
     for (std::size_t k = 0; k < junctions.size(); ++k) {
         const std::size_t top = k == 0 ? 0 : node_at(0.5 * (junctions[k - 1].depth + junctions[k].depth));
-        const std::size_t bottom =
-            k + 1 == junctions.size() ? system.nodes() - 1 : node_at(0.5 * (junctions[k].depth + junctions[k + 1].depth));
-        const double before = equilibrium.psi(bottom) - equilibrium.psi(top), after = biased.psi(bottom) - biased.psi(top);
+        const std::size_t bottom = k + 1 == junctions.size()
+                                       ? system.nodes() - 1
+                                       : node_at(0.5 * (junctions[k].depth + junctions[k + 1].depth));
+        const double before = equilibrium.psi(bottom) - equilibrium.psi(top),
+                     after = biased.psi(bottom) - biased.psi(top);
         // At zero bias all changes vanish and the largest barrier counts.
         const double change = biased.contact_voltage == 0 ? std::abs(after) : std::abs(after - before);
         if (change > most) {

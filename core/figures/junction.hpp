@@ -15,13 +15,14 @@ namespace bandwright {
 /// What one junction looks like in one state. A missing number has its reason in `state`.
 struct JunctionFigures {
     /// Half-depletion points: outward from n = p, the first upward crossing of majority density / net doping
-    /// through one half [m]; where a side is nowhere half depleted, the place where its doping begins. None where the
-    /// layer is depleted through.
+    /// through one half [m]; where a side is nowhere half depleted, the place where its doping begins. None
+    /// where the layer is depleted through.
     std::optional<double> top_edge, bottom_edge;
-    /// Largest field of the junction, signed [V/m], at a node or, where the field is smooth, at the summit between two.
+    /// Largest field of the junction, signed [V/m], at a node or, where the field is smooth, at the summit
+    /// between two.
     std::optional<double> peak_field, peak_depth;
-    /// The lightly doped side's field where it holds fewest carriers, carried to the junction by its doping alone,
-    /// signed [V/m]: the figure that a hand estimate means.
+    /// The lightly doped side's field where it holds fewest carriers, carried to the junction by its doping
+    /// alone, signed [V/m]: the figure that a hand estimate means.
     std::optional<double> extrapolated_field;
     /// Potential between the neutral neighbours, n side minus p side [V].
     std::optional<double> barrier;

@@ -20,7 +20,8 @@ struct Place {
 
 double inside(const DiscreteSystem& system, const Place& place) {
     const double h = system.mesh.width(place.cell);
-    return place.right ? system.mesh.position[place.cell + 1] - 1e-9 * h : system.mesh.position[place.cell] + 1e-9 * h;
+    return place.right ? system.mesh.position[place.cell + 1] - 1e-9 * h
+                       : system.mesh.position[place.cell] + 1e-9 * h;
 }
 
 Doping doping_of(const DiscreteSystem& system, const Place& place) {
@@ -36,7 +37,8 @@ std::vector<Place> places(const DiscreteSystem& system) {
         bool jumps = false;
         if (next_fixed < fixed.size() && fixed[next_fixed] == node) {
             ++next_fixed;
-            const Doping above = doping_of(system, {node - 1, true}), below = doping_of(system, {node, false});
+            const Doping above = doping_of(system, {node - 1, true}),
+                         below = doping_of(system, {node, false});
             jumps = system.mesh.layer_of_cell[node - 1] != system.mesh.layer_of_cell[node] ||
                     std::abs(above.donors - below.donors) + std::abs(above.acceptors - below.acceptors) >
                         1e-6 * (above.total() + below.total());
@@ -54,7 +56,8 @@ struct Description {
     const char* meaning;
 };
 constexpr Description over_bias_and_depth[] = {
-    {"conduction_band_edge", Unit::energy, "conduction band edge, electron energy, zero at the Fermi level of the bottom contact"},
+    {"conduction_band_edge", Unit::energy,
+     "conduction band edge, electron energy, zero at the Fermi level of the bottom contact"},
     {"valence_band_edge", Unit::energy, "valence band edge"},
     {"intrinsic_level", Unit::energy, "intrinsic level"},
     {"electron_quasi_fermi_level", Unit::energy, "quasi-Fermi level of electrons"},
@@ -64,7 +67,8 @@ constexpr Description over_bias_and_depth[] = {
     {"electron_density", Unit::density, "electron density"},
     {"hole_density", Unit::density, "hole density"},
     {"space_charge_density", Unit::density, "space charge density in elementary charges"},
-    {"electron_current_density", Unit::current_density, "electron current density, positive towards greater depth"},
+    {"electron_current_density", Unit::current_density,
+     "electron current density, positive towards greater depth"},
     {"hole_current_density", Unit::current_density, "hole current density, positive towards greater depth"},
     {"net_recombination_rate", Unit::rate, "recombination minus generation of all kinds"},
 };
@@ -92,11 +96,13 @@ Profiles empty_profiles(const DiscreteSystem& system) {
     for (std::size_t k = 1; k < profiles.depth_um.size(); ++k)
         require(profiles.depth_um[k] > profiles.depth_um[k - 1], "the depth axis does not increase");
     profiles.variables = {donors, acceptors, net};
-    for (const Description& d : over_bias_and_depth) profiles.variables.push_back({d.name, d.unit, d.meaning, true, {}});
+    for (const Description& d : over_bias_and_depth)
+        profiles.variables.push_back({d.name, d.unit, d.meaning, true, {}});
     return profiles;
 }
 
-void append_profiles(const DiscreteSystem& system, const State& state, const Equations& equations, Profiles& profiles) {
+void append_profiles(const DiscreteSystem& system, const State& state, const Equations& equations,
+                     Profiles& profiles) {
     const std::vector<double> displacement = displacement_at_nodes(system, state, equations);
     const TerminalCurrent current = terminal_current(system, state, equations);
     const CurrentProfile currents = current_profile(system, equations, current);
@@ -106,11 +112,13 @@ void append_profiles(const DiscreteSystem& system, const State& state, const Equ
         const std::size_t node = place.node();
         const EndCoefficients& end = system.of_cell(place.cell);
         const EndState& s = place.right ? equations.right[place.cell] : equations.left[place.cell];
-        const HalfRate& rate = place.right ? equations.rate_right[place.cell] : equations.rate_left[place.cell];
+        const HalfRate& rate =
+            place.right ? equations.rate_right[place.cell] : equations.rate_left[place.cell];
         const double half = 0.5 * system.mesh.width(place.cell) * (place.right ? 1 : -1);
         const double vacuum = -state.psi(node) * kT;
         const double conduction = vacuum - end.affinity_energy, valence = conduction - end.bandgap;
-        // The carried-on numbers are means over a half cell; the pointwise doping belongs to the place itself.
+        // The carried-on numbers are means over a half cell; the pointwise doping belongs to the place
+        // itself.
         const double net = doping_of(system, place).net();
         const double values[] = {conduction,
                                  valence,

@@ -1,6 +1,5 @@
-// Everything over depth for the result file: band edges, potential, field, densities, currents, recombination.
-// Not for: single figures (junction.hpp, terminal.hpp).
-// SPDX-License-Identifier: MIT
+// Everything over depth for the result file: band edges, potential, field, densities, currents,
+// recombination. Not for: single figures (junction.hpp, terminal.hpp). SPDX-License-Identifier: MIT
 #pragma once
 
 #include "core/base/results.hpp"
@@ -12,6 +11,7 @@ namespace bandwright {
 Profiles empty_profiles(const DiscreteSystem& system);
 
 /// Appends one bias to the variables over (bias, depth). `equations` filled for `state`.
-void append_profiles(const DiscreteSystem& system, const State& state, const Equations& equations, Profiles& profiles);
+void append_profiles(const DiscreteSystem& system, const State& state, const Equations& equations,
+                     Profiles& profiles);
 
 }  // namespace bandwright

@@ -16,7 +16,8 @@ double conductance(const Structure& structure, std::size_t layer, MobilityModel 
     if (doping.net() == 0) return 0;
     const Carrier carrier = doping.net() > 0 ? Carrier::electron : Carrier::hole;
     const Material& material = structure.materials[structure.layers[layer].material];
-    return constants::elementary_charge * std::abs(doping.net()) * mobility(carrier, model, material, doping, structure.temperature);
+    return constants::elementary_charge * std::abs(doping.net()) *
+           mobility(carrier, model, material, doping, structure.temperature);
 }
 
 // Seven-point Gauss-Legendre rule.
@@ -33,8 +34,10 @@ double gauss(double from, double to, const Function& f) {
 template <class Function>
 double adaptive(double from, double to, double whole, double scale, const Function& f, int depth) {
     const double middle = 0.5 * (from + to), left = gauss(from, middle, f), right = gauss(middle, to, f);
-    if (depth == 0 || std::abs(left + right - whole) <= 1e-10 * std::max(scale, std::abs(left + right))) return left + right;
-    return adaptive(from, middle, left, scale, f, depth - 1) + adaptive(middle, to, right, scale, f, depth - 1);
+    if (depth == 0 || std::abs(left + right - whole) <= 1e-10 * std::max(scale, std::abs(left + right)))
+        return left + right;
+    return adaptive(from, middle, left, scale, f, depth - 1) +
+           adaptive(middle, to, right, scale, f, depth - 1);
 }
 
 }  // namespace
@@ -51,7 +54,8 @@ std::vector<SheetLine> sheet_resistances(const Structure& structure) {
         for (const DopingEntry& entry : structure.doping) {
             for (const double x : breakpoints(entry.shape)) cuts.push_back(x);
             for (const Scale& scale : scales(entry.shape, boundaries.back()))
-                for (const double steps : {-4.0, -2.0, -1.0, 0.0, 1.0, 2.0, 4.0}) cuts.push_back(scale.depth + steps * scale.length);
+                for (const double steps : {-4.0, -2.0, -1.0, 0.0, 1.0, 2.0, 4.0})
+                    cuts.push_back(scale.depth + steps * scale.length);
         }
         std::erase_if(cuts, [&](double x) { return x < ends[k] || x > ends[k + 1]; });
         std::sort(cuts.begin(), cuts.end());
@@ -61,14 +65,20 @@ std::vector<SheetLine> sheet_resistances(const Structure& structure) {
             if (!(to > from)) continue;
             const double middle = 0.5 * (from + to);
             const auto above = std::upper_bound(boundaries.begin(), boundaries.end(), middle);
-            const std::size_t layer = std::min(static_cast<std::size_t>(above - boundaries.begin()) - 1, structure.layers.size() - 1);
-            const MobilityModel model = mobility_model(structure, structure.materials[structure.layers[layer].material]);
+            const std::size_t layer = std::min(static_cast<std::size_t>(above - boundaries.begin()) - 1,
+                                               structure.layers.size() - 1);
+            const MobilityModel model =
+                mobility_model(structure, structure.materials[structure.layers[layer].material]);
             const auto f = [&](double x) { return conductance(structure, layer, model, x); };
             const double whole = gauss(from, to, f);
             total += adaptive(from, to, whole, total, f, 30);
             donors += doping_at(structure, layer, middle).net() * (to - from);
         }
-        lines.push_back({ends[k], ends[k + 1], donors > 0 ? "n" : donors < 0 ? "p" : "undoped", total > 0 ? 1 / total : no_value});
+        lines.push_back({ends[k], ends[k + 1],
+                         donors > 0   ? "n"
+                         : donors < 0 ? "p"
+                                      : "undoped",
+                         total > 0 ? 1 / total : no_value});
     }
     return lines;
 }

@@ -5,7 +5,8 @@
 
 namespace bandwright {
 
-TerminalCurrent terminal_current(const DiscreteSystem& system, const State& state, const Equations& equations) {
+TerminalCurrent terminal_current(const DiscreteSystem& system, const State& state,
+                                 const Equations& equations) {
     TerminalCurrent current;
     double least_n = INFINITY, least_p = INFINITY;
     for (std::size_t cell = 0; cell < system.cells(); ++cell) {
@@ -33,18 +34,19 @@ TerminalCurrent terminal_current(const DiscreteSystem& system, const State& stat
     return current;
 }
 
-double terminal_derivative(const DiscreteSystem& system, const Equations& equations, const TerminalCurrent& current,
-                           std::span<const double> change) {
+double terminal_derivative(const DiscreteSystem& system, const Equations& equations,
+                           const TerminalCurrent& current, std::span<const double> change) {
     const std::size_t a = current.electron_cell, b = current.hole_cell;
     const CellFluxes &fa = equations.flux[a], &fb = equations.flux[b];
     double sum = fa.electron_by[0] * change[3 * a] + fa.electron_by[1] * change[3 * a + 1] +
                  fa.electron_by[2] * change[3 * a + 3] + fa.electron_by[3] * change[3 * a + 4] +
-                 fb.hole_by[0] * change[3 * b] + fb.hole_by[1] * change[3 * b + 2] + fb.hole_by[2] * change[3 * b + 3] +
-                 fb.hole_by[3] * change[3 * b + 5];
+                 fb.hole_by[0] * change[3 * b] + fb.hole_by[1] * change[3 * b + 2] +
+                 fb.hole_by[2] * change[3 * b + 3] + fb.hole_by[3] * change[3 * b + 5];
     double integral = 0;
     for (std::size_t node = std::min(a, b) + 1; node <= std::max(a, b); ++node) {
         const auto half = [&](const HalfRate& rate) {
-            return rate.by_psi * change[3 * node] + rate.by_phi_n * change[3 * node + 1] + rate.by_phi_p * change[3 * node + 2];
+            return rate.by_psi * change[3 * node] + rate.by_phi_n * change[3 * node + 1] +
+                   rate.by_phi_p * change[3 * node + 2];
         };
         integral += 0.5 * (system.mesh.width(node - 1) * half(equations.rate_right[node - 1]) +
                            system.mesh.width(node) * half(equations.rate_left[node]));
@@ -52,7 +54,8 @@ double terminal_derivative(const DiscreteSystem& system, const Equations& equati
     return sum + (b < a ? -integral : integral);
 }
 
-CurrentProfile current_profile(const DiscreteSystem& system, const Equations& equations, const TerminalCurrent& current) {
+CurrentProfile current_profile(const DiscreteSystem& system, const Equations& equations,
+                               const TerminalCurrent& current) {
     CurrentProfile profile;
     profile.electron.resize(system.cells());
     profile.hole.resize(system.cells());

@@ -22,21 +22,24 @@ struct TerminalCurrent {
 
 /// J = J_n(a) + J_p(b) + q integral from a to b of R, a and b the cells where each carrier is scarcest.
 ///
-/// The sum of both fluxes of one cell would drown a leakage current in the rounding noise of the majority flux; here
-/// every term is free of cancellation. Derivation: integrate both continuity equations between a and b.
-/// equations: filled by evaluate() or assemble() for `state`.
-/// Tests: verification/ (generation current of Sah, Noyce and Shockley), unit/figures/test_terminal.cpp
-TerminalCurrent terminal_current(const DiscreteSystem& system, const State& state, const Equations& equations);
+/// The sum of both fluxes of one cell would drown a leakage current in the rounding noise of the majority
+/// flux; here every term is free of cancellation. Derivation: integrate both continuity equations between a
+/// and b. equations: filled by evaluate() or assemble() for `state`. Tests: verification/ (generation current
+/// of Sah, Noyce and Shockley), unit/figures/test_terminal.cpp
+TerminalCurrent terminal_current(const DiscreteSystem& system, const State& state,
+                                 const Equations& equations);
 
 /// Derivative of the flux along a change of the unknowns (size 3 nodes) [m^-2 s^-1].
-double terminal_derivative(const DiscreteSystem& system, const Equations& equations, const TerminalCurrent& current,
-                           std::span<const double> change);
+double terminal_derivative(const DiscreteSystem& system, const Equations& equations,
+                           const TerminalCurrent& current, std::span<const double> change);
 
-/// Electron and hole current of every cell, J/q [m^-2 s^-1], by integrating R - G box by box from the two quiet cells.
+/// Electron and hole current of every cell, J/q [m^-2 s^-1], by integrating R - G box by box from the two
+/// quiet cells.
 struct CurrentProfile {
     std::vector<double> electron, hole;
 };
-CurrentProfile current_profile(const DiscreteSystem& system, const Equations& equations, const TerminalCurrent& current);
+CurrentProfile current_profile(const DiscreteSystem& system, const Equations& equations,
+                               const TerminalCurrent& current);
 
 /// Recombination of the whole box of an inner node [m^-2 s^-1].
 inline double box_rate(const DiscreteSystem& system, const Equations& equations, std::size_t node) {

@@ -9,8 +9,9 @@ namespace bandwright {
 
 /// A one-dimensional mesh. A cell joins nodes `cell` and `cell + 1`.
 ///
-/// Invariants: positions strictly increase; every layer boundary and every jump of the doping is a node; each stretch
-/// between two such fixed nodes has a number of cells that is a multiple of `coarsenings()` powers of two.
+/// Invariants: positions strictly increase; every layer boundary and every jump of the doping is a node; each
+/// stretch between two such fixed nodes has a number of cells that is a multiple of `coarsenings()` powers of
+/// two.
 struct Mesh {
     /// Depth of each node [m], size n.
     std::vector<double> position;
@@ -37,7 +38,8 @@ namespace bandwright {
 inline Mesh coarsened(const Mesh& fine) {
     Mesh coarse;
     for (std::size_t k = 0; k + 1 < fine.fixed.size(); ++k) {
-        require((fine.fixed[k + 1] - fine.fixed[k]) % 2 == 0, "a stretch between fixed nodes has an odd number of cells");
+        require((fine.fixed[k + 1] - fine.fixed[k]) % 2 == 0,
+                "a stretch between fixed nodes has an odd number of cells");
         coarse.fixed.push_back(coarse.position.size());
         for (std::size_t node = fine.fixed[k]; node < fine.fixed[k + 1]; node += 2) {
             coarse.position.push_back(fine.position[node]);

@@ -5,13 +5,14 @@
 
 namespace bandwright {
 
-Spacing widths_for(const Mesh& mesh, const std::vector<Demand>& demands, const std::vector<double>& largest_width,
-                   double tolerance, double least) {
+Spacing widths_for(const Mesh& mesh, const std::vector<Demand>& demands,
+                   const std::vector<double>& largest_width, double tolerance, double least) {
     const std::size_t cells = mesh.cells();
     std::vector<double> width(cells, INFINITY);
     for (const Demand& demand : demands) {
         double integral = 0;
-        for (std::size_t cell = 0; cell < cells; ++cell) integral += std::cbrt(demand[cell]) * mesh.width(cell);
+        for (std::size_t cell = 0; cell < cells; ++cell)
+            integral += std::cbrt(demand[cell]) * mesh.width(cell);
         if (!(integral > 0)) continue;
         const double share = std::pow(tolerance / integral, 1.5);
         for (std::size_t cell = 0; cell < cells; ++cell)
@@ -32,7 +33,8 @@ Spacing widths_for(const Mesh& mesh, const std::vector<Demand>& demands, const s
     return spacing;
 }
 
-std::vector<double> interpolated(const Mesh& from, const std::vector<double>& values, const Mesh& to, std::size_t stride) {
+std::vector<double> interpolated(const Mesh& from, const std::vector<double>& values, const Mesh& to,
+                                 std::size_t stride) {
     std::vector<double> result(to.nodes() * stride);
     std::size_t cell = 0;
     for (std::size_t node = 0; node < to.nodes(); ++node) {
@@ -52,7 +54,8 @@ std::vector<double> injected(const Mesh& fine, const std::vector<double>& values
     for (std::size_t k = 0; k + 1 < fine.fixed.size(); ++k)
         for (std::size_t node = fine.fixed[k]; node < fine.fixed[k + 1]; node += 2)
             for (std::size_t part = 0; part < stride; ++part) result.push_back(values[node * stride + part]);
-    for (std::size_t part = 0; part < stride; ++part) result.push_back(values[(fine.nodes() - 1) * stride + part]);
+    for (std::size_t part = 0; part < stride; ++part)
+        result.push_back(values[(fine.nodes() - 1) * stride + part]);
     return result;
 }
 

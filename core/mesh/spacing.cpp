@@ -8,9 +8,11 @@ namespace bandwright {
 void limit_growth(Spacing& spacing, double growth) {
     const std::size_t count = spacing.depth.size();
     for (std::size_t k = 1; k < count; ++k)
-        spacing.width[k] = std::min(spacing.width[k], spacing.width[k - 1] + growth * (spacing.depth[k] - spacing.depth[k - 1]));
+        spacing.width[k] = std::min(
+            spacing.width[k], spacing.width[k - 1] + growth * (spacing.depth[k] - spacing.depth[k - 1]));
     for (std::size_t k = count; k-- > 1;)
-        spacing.width[k - 1] = std::min(spacing.width[k - 1], spacing.width[k] + growth * (spacing.depth[k] - spacing.depth[k - 1]));
+        spacing.width[k - 1] = std::min(
+            spacing.width[k - 1], spacing.width[k] + growth * (spacing.depth[k] - spacing.depth[k - 1]));
 }
 
 namespace {
@@ -40,25 +42,29 @@ void fill_stretch(double from, double to, const Spacing& spacing, double factor,
     std::vector<double> total{0.0};
     for (std::size_t k = 1; k < offset.size(); ++k) {
         const double ratio = width[k] / width[k - 1] - 1;
-        const double mean = std::abs(ratio) < 1e-6 ? width[k - 1] * (1 + ratio / 2) : width[k - 1] * ratio / std::log1p(ratio);
+        const double mean = std::abs(ratio) < 1e-6 ? width[k - 1] * (1 + ratio / 2)
+                                                   : width[k - 1] * ratio / std::log1p(ratio);
         total.push_back(total.back() + (offset[k] - offset[k - 1]) / mean);
     }
     const double wanted = total.back() / static_cast<double>(multiple);
-    const std::size_t cells = multiple * std::max<std::size_t>(1, static_cast<std::size_t>(std::ceil(wanted - 1e-9)));
+    const std::size_t cells =
+        multiple * std::max<std::size_t>(1, static_cast<std::size_t>(std::ceil(wanted - 1e-9)));
     std::size_t k = 1;
     for (std::size_t node = 0; node < cells; ++node) {
         const double goal = total.back() * static_cast<double>(node) / static_cast<double>(cells);
         while (k + 1 < total.size() && total[k] < goal) ++k;
         const double share = goal - total[k - 1], span = offset[k] - offset[k - 1];
         const double slope = (width[k] - width[k - 1]) / span;
-        const double step = std::abs(slope * share) < 1e-9 ? width[k - 1] * share : width[k - 1] * std::expm1(slope * share) / slope;
+        const double step = std::abs(slope * share) < 1e-9 ? width[k - 1] * share
+                                                           : width[k - 1] * std::expm1(slope * share) / slope;
         position.push_back(from + offset[k - 1] + std::min(step, span));
     }
 }
 
 }  // namespace
 
-Mesh mesh_from_spacing(const FixedDepths& fixed, const Spacing& spacing, double factor, std::size_t multiple) {
+Mesh mesh_from_spacing(const FixedDepths& fixed, const Spacing& spacing, double factor,
+                       std::size_t multiple) {
     Mesh mesh;
     for (std::size_t k = 0; k + 1 < fixed.depth.size(); ++k) {
         mesh.fixed.push_back(mesh.position.size());

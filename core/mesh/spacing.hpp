@@ -17,8 +17,8 @@ struct Spacing {
     std::vector<double> width;
 };
 
-/// Lowers widths so that the width grows by no more than `growth` per unit of depth: w(x) <= w(y) + growth |x - y|.
-/// A smooth mesh is what keeps the scheme at second order and nested meshes comparable.
+/// Lowers widths so that the width grows by no more than `growth` per unit of depth: w(x) <= w(y) + growth |x
+/// - y|. A smooth mesh is what keeps the scheme at second order and nested meshes comparable.
 void limit_growth(Spacing& spacing, double growth);
 
 /// Fixed depths of a mesh: layer boundaries, jumps of the doping, junctions. One layer index per stretch.
@@ -27,8 +27,9 @@ struct FixedDepths {
     std::vector<std::size_t> layer_of_stretch;
 };
 
-/// Mesh whose cells follow the wanted widths between fixed depths. Each stretch gets a multiple of `multiple` cells
-/// (4 serves two coarsenings), at least `multiple`. `factor` scales all widths.
-Mesh mesh_from_spacing(const FixedDepths& fixed, const Spacing& spacing, double factor = 1, std::size_t multiple = 4);
+/// Mesh whose cells follow the wanted widths between fixed depths. Each stretch gets a multiple of `multiple`
+/// cells (4 serves two coarsenings), at least `multiple`. `factor` scales all widths.
+Mesh mesh_from_spacing(const FixedDepths& fixed, const Spacing& spacing, double factor = 1,
+                       std::size_t multiple = 4);
 
 }  // namespace bandwright

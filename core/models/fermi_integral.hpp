@@ -19,9 +19,9 @@ struct Degeneracy {
 /// Both degeneracy numbers at one reduced energy [1].
 ///
 /// Normalised integral F_j(eta) = 1/Gamma(j+1) integral t^j / (1 + exp(t - eta)) dt, tending to exp(eta).
-/// Ranges: eta <= 0 in z = exp(eta); (0, 4]; (4, 12]; (12, 40]; Sommerfeld's expansion above. Relative error of F_1/2
-/// below 1e-15, of its derivative below 2e-14, for -700 < eta < 1e4.
-/// Source: definition [Blakemore1982]; fit computed for this program. Tests: unit/models/test_fermi_integral.cpp
+/// Ranges: eta <= 0 in z = exp(eta); (0, 4]; (4, 12]; (12, 40]; Sommerfeld's expansion above. Relative error
+/// of F_1/2 below 1e-15, of its derivative below 2e-14, for -700 < eta < 1e4. Source: definition
+/// [Blakemore1982]; fit computed for this program. Tests: unit/models/test_fermi_integral.cpp
 Degeneracy degeneracy(double eta);
 
 /// F_1/2(eta) [1]; accuracy at `degeneracy`.

@@ -7,8 +7,8 @@ namespace bandwright {
 
 namespace {
 
-constexpr double per_cm3 = 1e-6;       // m^-3 -> cm^-3
-constexpr double from_cm2 = 1e-4;      // cm^2/Vs -> m^2/Vs
+constexpr double per_cm3 = 1e-6;   // m^-3 -> cm^-3
+constexpr double from_cm2 = 1e-4;  // cm^2/Vs -> m^2/Vs
 
 /// One column of Masetti's table I [cm^2/Vs, cm^-3].
 struct MasettiSet {
@@ -37,22 +37,26 @@ constexpr AroraSet arora_electrons{88, 7.4e8, -2.33, 1.26e17}, arora_holes{54.3,
 
 }  // namespace
 
-double ConstantMobility::operator()(Carrier carrier, const Material& material, const Doping&, double temperature) const {
+double ConstantMobility::operator()(Carrier carrier, const Material& material, const Doping&,
+                                    double temperature) const {
     const bool electrons = carrier == Carrier::electron;
     const double value = material.value(electrons ? "electron_mobility" : "hole_mobility");
     const char* exponent = electrons ? "electron_mobility_exponent" : "hole_mobility_exponent";
     return material.has(exponent) ? value * std::pow(300 / temperature, material.value(exponent)) : value;
 }
 
-double AroraMobility::operator()(Carrier carrier, const Material&, const Doping& doping, double temperature) const {
+double AroraMobility::operator()(Carrier carrier, const Material&, const Doping& doping,
+                                 double temperature) const {
     const AroraSet& set = carrier == Carrier::electron ? arora_electrons : arora_holes;
     const double t = temperature / 300, N = doping.total() * per_cm3;
     const double ratio = N / (set.reference * std::pow(t, 2.4));
     const double lattice = set.slope * std::pow(temperature, set.power);
-    return from_cm2 * (set.base * std::pow(t, -0.57) + lattice / (1 + std::pow(ratio, 0.88 * std::pow(t, -0.146))));
+    return from_cm2 *
+           (set.base * std::pow(t, -0.57) + lattice / (1 + std::pow(ratio, 0.88 * std::pow(t, -0.146))));
 }
 
-double MasettiMobility::operator()(Carrier carrier, const Material&, const Doping& doping, double temperature) const {
+double MasettiMobility::operator()(Carrier carrier, const Material&, const Doping& doping,
+                                   double temperature) const {
     const double N = doping.total() * per_cm3;
     if (carrier == Carrier::hole) return from_cm2 * masetti(boron, true, N, temperature);
     const double share = doping.donors > 0 ? doping.arsenic / doping.donors : 0;
@@ -63,9 +67,12 @@ double MasettiMobility::operator()(Carrier carrier, const Material&, const Dopin
 
 Mobility mobility_of(MobilityModel model) {
     switch (model) {
-        case MobilityModel::constant: return ConstantMobility{};
-        case MobilityModel::arora: return AroraMobility{};
-        case MobilityModel::masetti: return MasettiMobility{};
+        case MobilityModel::constant:
+            return ConstantMobility{};
+        case MobilityModel::arora:
+            return AroraMobility{};
+        case MobilityModel::masetti:
+            return MasettiMobility{};
     }
     return ConstantMobility{};
 }
@@ -80,48 +87,58 @@ std::optional<MobilityModel> mobility_named(std::string_view name) {
     return std::nullopt;
 }
 
-double mobility(Carrier carrier, MobilityModel model, const Material& material, const Doping& doping, double temperature) {
+double mobility(Carrier carrier, MobilityModel model, const Material& material, const Doping& doping,
+                double temperature) {
     const char* key = carrier == Carrier::electron ? "electron_mobility" : "hole_mobility";
     if (material.is_own(key)) return material.value(key);
-    return std::visit([&](const auto& alternative) { return alternative(carrier, material, doping, temperature); },
-                      mobility_of(model));
+    return std::visit(
+        [&](const auto& alternative) { return alternative(carrier, material, doping, temperature); },
+        mobility_of(model));
 }
 
 Ledger mobility_ledger(MobilityModel model, const Material& material) {
     Ledger lines;
-    const auto add = [&](const std::string& parameter, double shown_value, Unit unit, const std::string& source,
-                         Status status, const std::string& valid) {
-        lines.push_back({parameter, material.name, {shown_value * per_shown_unit(unit), unit, source, status, valid}});
+    const auto add = [&](const std::string& parameter, double shown_value, Unit unit,
+                         const std::string& source, Status status, const std::string& valid) {
+        lines.push_back(
+            {parameter, material.name, {shown_value * per_shown_unit(unit), unit, source, status, valid}});
     };
     if (model == MobilityModel::masetti) {
         const std::string source = "Masetti1983, table I", valid = "300 K; 1e13 to 1e21 cm-3";
         for (const MasettiSet* set : {&phosphorus, &arsenic, &boron}) {
             const std::string prefix = std::string("masetti ") + set->species + " ";
-            add(prefix + "mu_0", set->mu_0, Unit::mobility, source, Status::published, valid);
-            add(prefix + "mu_max", set->mu_max, Unit::mobility, source, Status::published, valid);
-            add(prefix + "C_r", set->C_r, Unit::density, source, Status::published, valid);
-            add(prefix + "alpha", set->alpha, Unit::one, source, Status::published, valid);
+            add(prefix + "mu_0", set->mu_0, Unit::mobility, source, Status::from_memory, valid);
+            add(prefix + "mu_max", set->mu_max, Unit::mobility, source, Status::from_memory, valid);
+            add(prefix + "C_r", set->C_r, Unit::density, source, Status::from_memory, valid);
+            add(prefix + "alpha", set->alpha, Unit::one, source, Status::from_memory, valid);
             add(prefix + "mu_1", set->mu_1, Unit::mobility, source, Status::from_memory, valid);
             add(prefix + "C_s", set->C_s, Unit::density, source, Status::from_memory, valid);
             add(prefix + "beta", set->beta, Unit::one, source, Status::from_memory, valid);
-            if (set->p_c > 0) add(prefix + "p_c", set->p_c, Unit::density, source, Status::from_memory, valid);
+            if (set->p_c > 0)
+                add(prefix + "p_c", set->p_c, Unit::density, source, Status::from_memory, valid);
         }
-        add("masetti electron temperature exponent", electron_exponent, Unit::one, "Klaassen1992", Status::from_memory, "");
-        add("masetti hole temperature exponent", hole_exponent, Unit::one, "Klaassen1992", Status::from_memory, "");
+        add("masetti electron temperature exponent", electron_exponent, Unit::one, "Klaassen1992",
+            Status::from_memory, "");
+        add("masetti hole temperature exponent", hole_exponent, Unit::one, "Klaassen1992",
+            Status::from_memory, "");
     } else if (model == MobilityModel::arora) {
         const std::string source = "Arora1982", valid = "250 to 500 K; to 1e20 cm-3; 13 %";
-        const std::array<std::pair<const char*, const AroraSet*>, 2> sets{{{"electron", &arora_electrons}, {"hole", &arora_holes}}};
+        const std::array<std::pair<const char*, const AroraSet*>, 2> sets{
+            {{"electron", &arora_electrons}, {"hole", &arora_holes}}};
         for (const auto& [carrier, set] : sets) {
             const std::string prefix = std::string("arora ") + carrier + " ";
             add(prefix + "base mobility", set->base, Unit::mobility, source, Status::from_memory, valid);
-            add(prefix + "lattice mobility at 300 K", set->slope * std::pow(300.0, set->power), Unit::mobility, source,
-                Status::from_memory, valid);
+            add(prefix + "lattice mobility at 300 K", set->slope * std::pow(300.0, set->power),
+                Unit::mobility, source, Status::from_memory, valid);
             add(prefix + "temperature power", set->power, Unit::one, source, Status::from_memory, valid);
-            add(prefix + "reference density", set->reference, Unit::density, source, Status::from_memory, valid);
+            add(prefix + "reference density", set->reference, Unit::density, source, Status::from_memory,
+                valid);
         }
     } else {
-        for (const char* key : {"electron_mobility", "electron_mobility_exponent", "hole_mobility", "hole_mobility_exponent"})
-            if (material.has(key)) lines.push_back({key, material.name, material.parameters.find(key)->second});
+        for (const char* key :
+             {"electron_mobility", "electron_mobility_exponent", "hole_mobility", "hole_mobility_exponent"})
+            if (material.has(key))
+                lines.push_back({key, material.name, material.parameters.find(key)->second});
     }
     return lines;
 }

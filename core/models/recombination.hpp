@@ -8,7 +8,8 @@
 
 namespace bandwright {
 
-/// R = Pi / (tau_p (n + n1) + tau_n (p + p1)) [m^-3 s^-1]; lifetimes [s]. Source: [ShockleyRead1952], [Hall1952].
+/// R = Pi / (tau_p (n + n1) + tau_n (p + p1)) [m^-3 s^-1]; lifetimes [s]. Source: [ShockleyRead1952],
+/// [Hall1952].
 struct ShockleyReadHall {
     static constexpr std::string_view name = "srh";
     double tau_n, tau_p;

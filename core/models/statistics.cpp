@@ -10,7 +10,8 @@ namespace bandwright {
 
 namespace {
 
-// Boltzmann: psi/U_T measured from the intrinsic point is asinh(N / 2 nie), by logarithms where nie underflows.
+// Boltzmann: psi/U_T measured from the intrinsic point is asinh(N / 2 nie), by logarithms where nie
+// underflows.
 double boltzmann_reduced(const Bands& bands, double net_doping) {
     const double log_half_intrinsic = 0.5 * bands.log_intrinsic_squared;
     if (net_doping == 0) return 0;
@@ -25,15 +26,19 @@ double boltzmann_reduced(const Bands& bands, double net_doping) {
 double neutral_potential(const Bands& bands, Statistics statistics, double temperature, double net_doping) {
     const double kT = constants::thermal_voltage(temperature);
     const double log_Nc = std::log(bands.Nc), log_Nv = std::log(bands.Nv);
-    const double affinity = bands.electron_affinity / kT, ionization = (bands.electron_affinity + bands.bandgap) / kT;
+    const double affinity = bands.electron_affinity / kT,
+                 ionization = (bands.electron_affinity + bands.bandgap) / kT;
     double psi = boltzmann_reduced(bands, net_doping) + 0.5 * bands.log_intrinsic_squared - log_Nc - affinity;
     if (statistics == Statistics::boltzmann) return psi * kT;
-    // Fermi-Dirac: Newton on the logarithm of the majority balance, which is nearly straight; minority as it comes.
+    // Fermi-Dirac: Newton on the logarithm of the majority balance, which is nearly straight; minority as it
+    // comes.
     const bool n_side = net_doping >= 0;
     for (int step = 0; step < 60; ++step) {
         const Degeneracy dn = degeneracy(psi + affinity), dp = degeneracy(-psi - ionization);
-        const double log_n = log_Nc + psi + affinity + dn.log_gamma, log_p = log_Nv - psi - ionization + dp.log_gamma;
-        const double n = std::exp(std::clamp(log_n, -700.0, 700.0)), p = std::exp(std::clamp(log_p, -700.0, 700.0));
+        const double log_n = log_Nc + psi + affinity + dn.log_gamma,
+                     log_p = log_Nv - psi - ionization + dp.log_gamma;
+        const double n = std::exp(std::clamp(log_n, -700.0, 700.0)),
+                     p = std::exp(std::clamp(log_p, -700.0, 700.0));
         const double left = n_side ? n : p, right = n_side ? p + net_doping : n - net_doping;
         const double slope = n_side ? dn.ratio + p * dp.ratio / right : -(dp.ratio + n * dn.ratio / right);
         const double change = -(std::log(left) - std::log(right)) / slope;

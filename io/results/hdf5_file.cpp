@@ -66,7 +66,8 @@ hid_t fixed_text_type(std::size_t length) {
 
 Hdf5File::Hdf5File(std::int64_t id, std::filesystem::path path) : id_(id), path_(std::move(path)) {}
 
-Hdf5File::Hdf5File(Hdf5File&& other) noexcept : id_(std::exchange(other.id_, -1)), path_(std::move(other.path_)) {}
+Hdf5File::Hdf5File(Hdf5File&& other) noexcept
+    : id_(std::exchange(other.id_, -1)), path_(std::move(other.path_)) {}
 
 Hdf5File::~Hdf5File() {
     if (id_ >= 0) H5Fclose(id_);
@@ -102,8 +103,10 @@ void Hdf5File::attribute(const std::string& dataset, const std::string& name, co
 void Hdf5File::attribute(const std::string& dataset, const std::string& name, std::int64_t value) {
     const Handle object(H5Oopen(id_, dataset.empty() ? "/" : dataset.c_str(), H5P_DEFAULT), H5Oclose);
     const Handle space(H5Screate(H5S_SCALAR), H5Sclose);
-    const Handle attribute(H5Acreate2(object, name.c_str(), H5T_STD_I64LE, space, H5P_DEFAULT, H5P_DEFAULT), H5Aclose);
-    if (attribute < 0 || H5Awrite(attribute, H5T_NATIVE_INT64, &value) < 0) fail(path_, "the attribute " + name + " cannot be written");
+    const Handle attribute(H5Acreate2(object, name.c_str(), H5T_STD_I64LE, space, H5P_DEFAULT, H5P_DEFAULT),
+                           H5Aclose);
+    if (attribute < 0 || H5Awrite(attribute, H5T_NATIVE_INT64, &value) < 0)
+        fail(path_, "the attribute " + name + " cannot be written");
 }
 
 namespace {
@@ -116,7 +119,8 @@ struct Shape {
 Shape shape_of(hid_t file, const std::vector<std::string>& scales, const std::filesystem::path& path) {
     Shape shape;
     for (const std::string& name : scales) {
-        const Handle dataset(checked(H5Dopen2(file, name.c_str(), H5P_DEFAULT), path, "no scale " + name), H5Dclose);
+        const Handle dataset(checked(H5Dopen2(file, name.c_str(), H5P_DEFAULT), path, "no scale " + name),
+                             H5Dclose);
         const Handle space(H5Dget_space(dataset), H5Sclose);
         hsize_t length = 0;
         H5Sget_simple_extent_dims(space, &length, nullptr);
@@ -126,10 +130,14 @@ Shape shape_of(hid_t file, const std::vector<std::string>& scales, const std::fi
     return shape;
 }
 
-void attach(hid_t file, hid_t dataset, const std::vector<std::string>& scales, const std::filesystem::path& path) {
+void attach(hid_t file, hid_t dataset, const std::vector<std::string>& scales,
+            const std::filesystem::path& path) {
     for (unsigned axis = 0; axis < scales.size(); ++axis) {
-        const Handle scale(checked(H5Dopen2(file, scales[axis].c_str(), H5P_DEFAULT), path, "no scale " + scales[axis]), H5Dclose);
-        if (H5DSattach_scale(dataset, scale, axis) < 0) fail(path, "the scale " + scales[axis] + " cannot be attached");
+        const Handle scale(
+            checked(H5Dopen2(file, scales[axis].c_str(), H5P_DEFAULT), path, "no scale " + scales[axis]),
+            H5Dclose);
+        if (H5DSattach_scale(dataset, scale, axis) < 0)
+            fail(path, "the scale " + scales[axis] + " cannot be attached");
     }
 }
 
@@ -139,21 +147,25 @@ hid_t creation_properties() {
     return properties;
 }
 
-void write_data(hid_t file, const std::string& name, const std::vector<std::string>& scales, hid_t file_type, hid_t memory_type,
-                const void* data, std::size_t count, const void* fill, const std::filesystem::path& path) {
+void write_data(hid_t file, const std::string& name, const std::vector<std::string>& scales, hid_t file_type,
+                hid_t memory_type, const void* data, std::size_t count, const void* fill,
+                const std::filesystem::path& path) {
     const Shape shape = shape_of(file, scales, path);
     require(shape.count == count, "the variable " + name + " does not fit its dimensions");
-    const Handle space(H5Screate_simple(static_cast<int>(shape.lengths.size()), shape.lengths.data(), nullptr), H5Sclose);
+    const Handle space(
+        H5Screate_simple(static_cast<int>(shape.lengths.size()), shape.lengths.data(), nullptr), H5Sclose);
     const Handle properties(creation_properties(), H5Pclose);
     if (fill) H5Pset_fill_value(properties, memory_type, fill);
-    const Handle dataset(H5Dcreate2(file, name.c_str(), file_type, space, H5P_DEFAULT, properties, H5P_DEFAULT), H5Dclose);
+    const Handle dataset(
+        H5Dcreate2(file, name.c_str(), file_type, space, H5P_DEFAULT, properties, H5P_DEFAULT), H5Dclose);
     if (dataset < 0) fail(path, "the variable " + name + " cannot be created");
     if (count > 0 && H5Dwrite(dataset, memory_type, H5S_ALL, H5S_ALL, H5P_DEFAULT, data) < 0)
         fail(path, "the variable " + name + " cannot be written");
     if (fill) {
         const hsize_t one = 1;
         const Handle single(H5Screate_simple(1, &one, nullptr), H5Sclose);
-        const Handle attribute(H5Acreate2(dataset, "_FillValue", file_type, single, H5P_DEFAULT, H5P_DEFAULT), H5Aclose);
+        const Handle attribute(H5Acreate2(dataset, "_FillValue", file_type, single, H5P_DEFAULT, H5P_DEFAULT),
+                               H5Aclose);
         H5Awrite(attribute, memory_type, fill);
     }
     attach(file, dataset, scales, path);
@@ -163,35 +175,44 @@ void write_data(hid_t file, const std::string& name, const std::vector<std::stri
 
 void Hdf5File::scale(const std::string& name, const std::vector<double>& values) {
     const hsize_t length = values.size();
-    const Handle space(H5Screate_simple(1, &length, nullptr), H5Sclose), properties(creation_properties(), H5Pclose);
-    const Handle dataset(H5Dcreate2(id_, name.c_str(), H5T_IEEE_F64LE, space, H5P_DEFAULT, properties, H5P_DEFAULT), H5Dclose);
+    const Handle space(H5Screate_simple(1, &length, nullptr), H5Sclose),
+        properties(creation_properties(), H5Pclose);
+    const Handle dataset(
+        H5Dcreate2(id_, name.c_str(), H5T_IEEE_F64LE, space, H5P_DEFAULT, properties, H5P_DEFAULT), H5Dclose);
     if (dataset < 0) fail(path_, "the scale " + name + " cannot be created");
     if (length > 0 && H5Dwrite(dataset, H5T_NATIVE_DOUBLE, H5S_ALL, H5S_ALL, H5P_DEFAULT, values.data()) < 0)
         fail(path_, "the scale " + name + " cannot be written");
     if (H5DSset_scale(dataset, name.c_str()) < 0) fail(path_, name + " cannot be made a scale");
 }
 
-void Hdf5File::variable(const std::string& name, const std::vector<std::string>& scales, const std::vector<double>& values) {
+void Hdf5File::variable(const std::string& name, const std::vector<std::string>& scales,
+                        const std::vector<double>& values) {
     const double fill = std::numeric_limits<double>::quiet_NaN();
-    write_data(id_, name, scales, H5T_IEEE_F64LE, H5T_NATIVE_DOUBLE, values.data(), values.size(), &fill, path_);
+    write_data(id_, name, scales, H5T_IEEE_F64LE, H5T_NATIVE_DOUBLE, values.data(), values.size(), &fill,
+               path_);
 }
 
-void Hdf5File::variable(const std::string& name, const std::vector<std::string>& scales, const std::vector<int>& values) {
-    write_data(id_, name, scales, H5T_STD_I32LE, H5T_NATIVE_INT, values.data(), values.size(), nullptr, path_);
+void Hdf5File::variable(const std::string& name, const std::vector<std::string>& scales,
+                        const std::vector<int>& values) {
+    write_data(id_, name, scales, H5T_STD_I32LE, H5T_NATIVE_INT, values.data(), values.size(), nullptr,
+               path_);
 }
 
 void Hdf5File::text(const std::string& name, const std::string& value) {
-    const Handle type(H5Tcopy(H5T_C_S1), H5Tclose), space(H5Screate(H5S_SCALAR), H5Sclose), properties(creation_properties(), H5Pclose);
+    const Handle type(H5Tcopy(H5T_C_S1), H5Tclose), space(H5Screate(H5S_SCALAR), H5Sclose),
+        properties(creation_properties(), H5Pclose);
     H5Tset_size(type, H5T_VARIABLE);
     H5Tset_cset(type, H5T_CSET_UTF8);
-    const Handle dataset(H5Dcreate2(id_, name.c_str(), type, space, H5P_DEFAULT, properties, H5P_DEFAULT), H5Dclose);
+    const Handle dataset(H5Dcreate2(id_, name.c_str(), type, space, H5P_DEFAULT, properties, H5P_DEFAULT),
+                         H5Dclose);
     const char* pointer = value.c_str();
     if (dataset < 0 || H5Dwrite(dataset, type, H5S_ALL, H5S_ALL, H5P_DEFAULT, &pointer) < 0)
         fail(path_, "the text " + name + " cannot be written");
 }
 
 std::vector<std::size_t> Hdf5File::lengths(const std::string& name) const {
-    const Handle dataset(checked(H5Dopen2(id_, name.c_str(), H5P_DEFAULT), path_, "there is no " + name), H5Dclose);
+    const Handle dataset(checked(H5Dopen2(id_, name.c_str(), H5P_DEFAULT), path_, "there is no " + name),
+                         H5Dclose);
     const Handle space(H5Dget_space(dataset), H5Sclose);
     std::vector<hsize_t> lengths(static_cast<std::size_t>(H5Sget_simple_extent_ndims(space)));
     if (!lengths.empty()) H5Sget_simple_extent_dims(space, lengths.data(), nullptr);
@@ -209,7 +230,8 @@ std::vector<double> Hdf5File::values(const std::string& name) const {
 }
 
 std::string Hdf5File::text(const std::string& name) const {
-    const Handle dataset(checked(H5Dopen2(id_, name.c_str(), H5P_DEFAULT), path_, "there is no " + name), H5Dclose);
+    const Handle dataset(checked(H5Dopen2(id_, name.c_str(), H5P_DEFAULT), path_, "there is no " + name),
+                         H5Dclose);
     const Handle type(H5Dget_type(dataset), H5Tclose), space(H5Dget_space(dataset), H5Sclose);
     char* pointer = nullptr;
     if (H5Tis_variable_str(type) <= 0 || H5Dread(dataset, type, H5S_ALL, H5S_ALL, H5P_DEFAULT, &pointer) < 0)
@@ -220,7 +242,8 @@ std::string Hdf5File::text(const std::string& name) const {
 }
 
 std::string Hdf5File::attribute(const std::string& name) const {
-    const Handle attribute(checked(H5Aopen(id_, name.c_str(), H5P_DEFAULT), path_, "there is no attribute " + name), H5Aclose);
+    const Handle attribute(
+        checked(H5Aopen(id_, name.c_str(), H5P_DEFAULT), path_, "there is no attribute " + name), H5Aclose);
     const Handle type(H5Aget_type(attribute), H5Tclose);
     std::string value(H5Tget_size(type), '\0');
     if (H5Aread(attribute, type, value.data()) < 0) fail(path_, "the attribute " + name + " cannot be read");

@@ -1,6 +1,5 @@
-// An HDF5 file being written or read: RAII over the C API, errors as FileError. hdf5.h is included in the .cpp alone.
-// Not for: which variables a result file has (write_results.cpp).
-// SPDX-License-Identifier: MIT
+// An HDF5 file being written or read: RAII over the C API, errors as FileError. hdf5.h is included in the
+// .cpp alone. Not for: which variables a result file has (write_results.cpp). SPDX-License-Identifier: MIT
 #pragma once
 
 #include <cstdint>
@@ -13,7 +12,8 @@ namespace bandwright {
 /// A flat file of datasets with dimension scales, readable as netCDF-4.
 class Hdf5File {
   public:
-    /// Creates the file (replacing one of that name). Errors: FileError with the file's name and HDF5's reason.
+    /// Creates the file (replacing one of that name). Errors: FileError with the file's name and HDF5's
+    /// reason.
     static Hdf5File create(const std::filesystem::path& path);
     /// Opens an existing file for reading. Errors: FileError.
     static Hdf5File open(const std::filesystem::path& path);
@@ -28,9 +28,11 @@ class Hdf5File {
     /// A dimension scale of doubles.
     void scale(const std::string& name, const std::vector<double>& values);
     /// Doubles over named scales, row-major, with _FillValue NaN.
-    void variable(const std::string& name, const std::vector<std::string>& scales, const std::vector<double>& values);
+    void variable(const std::string& name, const std::vector<std::string>& scales,
+                  const std::vector<double>& values);
     /// 32-bit integers over named scales.
-    void variable(const std::string& name, const std::vector<std::string>& scales, const std::vector<int>& values);
+    void variable(const std::string& name, const std::vector<std::string>& scales,
+                  const std::vector<int>& values);
     /// A scalar string of any length, UTF-8.
     void text(const std::string& name, const std::string& value);
 

@@ -28,7 +28,9 @@ Json ledger_array(const Ledger& ledger) {
 Json figures_of(const Results& results) {
     Json figures = Json::object();
     for (const Figure& figure : results.figures) {
-        Json entry{{"value", in_unit(figure.value, figure.unit)}, {"unit", info(figure.unit).text}, {"error", in_unit(figure.error, figure.unit)}};
+        Json entry{{"value", in_unit(figure.value, figure.unit)},
+                   {"unit", info(figure.unit).text},
+                   {"error", in_unit(figure.error, figure.unit)}};
         if (!figure.state.empty()) entry["state"] = figure.state;
         figures[figure.name] = entry;
     }
@@ -37,14 +39,16 @@ Json figures_of(const Results& results) {
         junctions.push_back({{"depth", in_unit(junction.depth, Unit::length)},
                              {"type", junction.p_above ? "p above n" : "n above p"},
                              {"gradient", in_unit(junction.gradient, Unit::density_gradient)}});
-    figures["junctions"] = {{"value", junctions}, {"unit", {{"depth", "um"}, {"gradient", "cm-4"}}}, {"error", nullptr}};
+    figures["junctions"] = {
+        {"value", junctions}, {"unit", {{"depth", "um"}, {"gradient", "cm-4"}}}, {"error", nullptr}};
     Json sheets = Json::array();
     for (const SheetLine& sheet : results.sheet_resistances)
         sheets.push_back({{"from", in_unit(sheet.from, Unit::length)},
                           {"to", in_unit(sheet.to, Unit::length)},
                           {"type", sheet.type},
                           {"value", in_unit(sheet.value, Unit::sheet_resistance)}});
-    figures["sheet_resistances"] = {{"value", sheets}, {"unit", {{"from", "um"}, {"to", "um"}, {"value", "ohm"}}}, {"error", nullptr}};
+    figures["sheet_resistances"] = {
+        {"value", sheets}, {"unit", {{"from", "um"}, {"to", "um"}, {"value", "ohm"}}}, {"error", nullptr}};
     return figures;
 }
 
@@ -53,20 +57,19 @@ Json figures_of(const Results& results) {
 std::string ledger_json(const Ledger& ledger) { return ledger_array(ledger).dump(1); }
 
 std::string summary_json(const Results& results) {
-    Json document{{"format", "bandwright-summary 1"},
-                  {"command", results.command},
-                  {"title", results.title},
-                  {"structure", results.structure_name},
-                  {"status", results.status},
-                  {"temperature", {{"value", results.temperature}, {"unit", "K"}}},
-                  {"figures", figures_of(results)}};
+    Json document{
+        {"format", "bandwright-summary 1"}, {"command", results.command},
+        {"title", results.title},           {"structure", results.structure_name},
+        {"status", results.status},         {"temperature", {{"value", results.temperature}, {"unit", "K"}}},
+        {"figures", figures_of(results)}};
     if (!results.points.columns.empty()) {
         Json points = Json::array(), units = Json::object();
         for (std::size_t row = 0; row < results.points.rows(); ++row) {
             Json point = Json::object();
             for (const Column& column : results.points.columns) {
                 point[column.name] = in_unit(column.values[row], column.unit);
-                if (!column.errors.empty()) point[column.name + "_error"] = in_unit(column.errors[row], column.unit);
+                if (!column.errors.empty())
+                    point[column.name + "_error"] = in_unit(column.errors[row], column.unit);
             }
             points.push_back(point);
         }

@@ -9,9 +9,8 @@
 
 namespace bandwright {
 
-/// Summary of a run, "bandwright-summary 1". Values in shown units; a missing value or error is null. The ledger is in
-/// it for the command `ledger`.
-/// Errors: none.
+/// Summary of a run, "bandwright-summary 1". Values in shown units; a missing value or error is null. The
+/// ledger is in it for the command `ledger`. Errors: none.
 std::string summary_json(const Results& results);
 
 /// The ledger alone, as a JSON array.

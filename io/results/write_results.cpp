@@ -62,7 +62,8 @@ void write_profiles(Hdf5File& file, const Profiles& profiles) {
 
 void write_measured(Hdf5File& file, const std::vector<MeasuredPoints>& measured) {
     for (std::size_t k = 0; k < measured.size(); ++k) {
-        const std::string depth = fmt::format("measured_{}_depth", k), value = fmt::format("measured_{}_concentration", k);
+        const std::string depth = fmt::format("measured_{}_depth", k),
+                          value = fmt::format("measured_{}_concentration", k);
         file.scale(depth, in_shown_unit(measured[k].depth, Unit::length, depth));
         describe(file, depth, "um", "depths of the measured profile " + measured[k].file);
         file.variable(value, {depth}, in_shown_unit(measured[k].concentration, Unit::density, value));
@@ -99,12 +100,14 @@ void write_whole(const std::filesystem::path& path, const Results& results) {
 // What has been written reaches the disk before the name points at it.
 void make_durable(const std::filesystem::path& path) {
     const int descriptor = ::open(path.c_str(), O_RDONLY);
-    if (descriptor < 0) throw FileError(fmt::format("{}: cannot be opened ({})", path.string(), std::strerror(errno)));
+    if (descriptor < 0)
+        throw FileError(fmt::format("{}: cannot be opened ({})", path.string(), std::strerror(errno)));
     const int code = ::fsync(descriptor);
     const int why = errno;
     ::close(descriptor);
     // A folder on some file systems cannot be synchronised; that is no loss of what we promise.
-    if (code != 0 && why != EINVAL) throw FileError(fmt::format("{}: cannot be made durable ({})", path.string(), std::strerror(why)));
+    if (code != 0 && why != EINVAL)
+        throw FileError(fmt::format("{}: cannot be made durable ({})", path.string(), std::strerror(why)));
 }
 
 }  // namespace
@@ -124,9 +127,11 @@ void write_results(const std::filesystem::path& path, const Results& results) {
     if (trouble) {
         std::error_code ignored;
         std::filesystem::remove(temporary, ignored);
-        throw FileError(fmt::format("{}: the new file cannot be put in place ({})", path.string(), trouble.message()));
+        throw FileError(
+            fmt::format("{}: the new file cannot be put in place ({})", path.string(), trouble.message()));
     }
-    const std::filesystem::path folder = path.has_parent_path() ? path.parent_path() : std::filesystem::path(".");
+    const std::filesystem::path folder =
+        path.has_parent_path() ? path.parent_path() : std::filesystem::path(".");
     make_durable(folder);
 }
 

@@ -9,8 +9,9 @@
 
 namespace bandwright {
 
-/// Writes results to a temporary file beside `path`, makes it durable and renames it: `path` is at every moment either
-/// the previous file or a whole new one. Errors: FileError with the file's name; ContractError for an infinite number.
+/// Writes results to a temporary file beside `path`, makes it durable and renames it: `path` is at every
+/// moment either the previous file or a whole new one. Errors: FileError with the file's name; ContractError
+/// for an infinite number.
 void write_results(const std::filesystem::path& path, const Results& results);
 
 }  // namespace bandwright

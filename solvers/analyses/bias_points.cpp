@@ -91,8 +91,8 @@ void store_point(Run& run, std::size_t request) {
     std::vector<PointFigures> nested;
     for (Level& level : run.levels) {
         if (!level.usable) break;
-        nested.push_back(point_figures(*level.system, level.walk->state(), level.walk->equations(), run.junctions, run.which,
-                                       level.walk->report().iteration_error));
+        nested.push_back(point_figures(*level.system, level.walk->state(), level.walk->equations(),
+                                       run.junctions, run.which, level.walk->report().iteration_error));
     }
     Level& finest = run.levels.front();
     Profiles one = run.profiles_empty;
@@ -115,15 +115,17 @@ void count_iterations(Run& run) {
 void fill_outcome(Run& run) {
     std::vector<std::size_t> order(run.points.size());
     std::iota(order.begin(), order.end(), std::size_t{0});
-    std::sort(order.begin(), order.end(), [&](std::size_t a, std::size_t b) { return run.points[a].request < run.points[b].request; });
+    std::sort(order.begin(), order.end(),
+              [&](std::size_t a, std::size_t b) { return run.points[a].request < run.points[b].request; });
     Column bias{"bias", Unit::voltage, "terminal voltage, top minus bottom", {}, {}};
     for (const std::size_t k : order) bias.values.push_back(run.request.biases[run.points[k].request]);
     Table table{{bias}};
     for (const PointFigure figure :
-         {PointFigure::current_density, PointFigure::junction_voltage, PointFigure::peak_field, PointFigure::peak_field_depth,
-          PointFigure::extrapolated_field, PointFigure::depletion_top_edge, PointFigure::depletion_bottom_edge,
-          PointFigure::depletion_width}) {
-        const bool of_junction = figure != PointFigure::current_density && figure != PointFigure::junction_voltage;
+         {PointFigure::current_density, PointFigure::junction_voltage, PointFigure::peak_field,
+          PointFigure::peak_field_depth, PointFigure::extrapolated_field, PointFigure::depletion_top_edge,
+          PointFigure::depletion_bottom_edge, PointFigure::depletion_width}) {
+        const bool of_junction =
+            figure != PointFigure::current_density && figure != PointFigure::junction_voltage;
         if (of_junction && run.junctions.empty()) continue;
         Column column{info(figure).name, info(figure).unit, info(figure).meaning, {}, {}};
         for (const std::size_t k : order) {
@@ -131,7 +133,8 @@ void fill_outcome(Run& run) {
             column.errors.push_back(run.points[k].errors[static_cast<std::size_t>(figure)]);
         }
         if (figure == PointFigure::current_density && run.structure.area) {
-            Column current{"current", Unit::current, "current into the top contact", column.values, column.errors};
+            Column current{"current", Unit::current, "current into the top contact", column.values,
+                           column.errors};
             for (double& value : current.values) value *= *run.structure.area;
             for (double& value : current.errors) value *= *run.structure.area;
             table.columns.push_back(std::move(column));
@@ -157,8 +160,8 @@ void add_equilibrium_figures(Run& run) {
     std::vector<PointFigures> nested;
     for (Level& level : run.levels) {
         if (!level.usable) break;
-        nested.push_back(point_figures(*level.system, level.walk->state(), level.walk->equations(), run.junctions, run.which,
-                                       level.walk->report().iteration_error));
+        nested.push_back(point_figures(*level.system, level.walk->state(), level.walk->equations(),
+                                       run.junctions, run.which, level.walk->report().iteration_error));
     }
     const auto errors = nested_errors(nested);
     for (const PointFigure figure : {PointFigure::built_in_potential, PointFigure::contact_potential}) {
@@ -169,7 +172,8 @@ void add_equilibrium_figures(Run& run) {
         out.meaning = info(figure).meaning;
         out.value = nested.front()[figure];
         out.error = errors[static_cast<std::size_t>(figure)];
-        if (std::isnan(out.value)) out.state = nested.front().state.empty() ? "no neutral region on one side" : nested.front().state;
+        if (std::isnan(out.value))
+            out.state = nested.front().state.empty() ? "no neutral region on one side" : nested.front().state;
         run.outcome.figures.push_back(out);
     }
 }
@@ -208,8 +212,7 @@ EndReason walk_through(Run& run) {
         if (!down && was_down && walk.voltage() != 0) walk.start_from(equilibrium, 0);
         was_down = down;
         if (down ? limited_down : limited_up) continue;
-        const BiasWalk::Arrival arrival =
-            walk.walk_to(bias / thermal, most_flux, [&] { return run.stop(); });
+        const BiasWalk::Arrival arrival = walk.walk_to(bias / thermal, most_flux, [&] { return run.stop(); });
         if (arrival == BiasWalk::Arrival::interrupted) return EndReason::interrupted;
         if (arrival == BiasWalk::Arrival::stopped) {
             run.outcome.message = walk.message();
@@ -218,14 +221,18 @@ EndReason walk_through(Run& run) {
         if (arrival == BiasWalk::Arrival::current_limit) {
             (down ? limited_down : limited_up) = true;
             if (run.outcome.message.empty())
-                run.outcome.message = fmt::format("at {:.6g} V the current density reaches {:.3g} A cm-2, the limit of {:.3g}; the sweep ends there",
-                                                  walk.voltage() * thermal, shown(std::abs(walk.flux()) * constants::elementary_charge, Unit::current_density),
-                                                  shown(run.request.max_current, Unit::current_density));
+                run.outcome.message = fmt::format(
+                    "at {:.6g} V the current density reaches {:.3g} A cm-2, the limit of {:.3g}; the sweep "
+                    "ends there",
+                    walk.voltage() * thermal,
+                    shown(std::abs(walk.flux()) * constants::elementary_charge, Unit::current_density),
+                    shown(run.request.max_current, Unit::current_density));
             if (walk.voltage() != bias / thermal) continue;
         }
         solve_nested(run);
         store_point(run, order[k]);
-        run.tell((static_cast<double>(k) + 1) / static_cast<double>(order.size()), fmt::format("{:.4g} V", bias));
+        run.tell((static_cast<double>(k) + 1) / static_cast<double>(order.size()),
+                 fmt::format("{:.4g} V", bias));
         if (run.hooks.wants_checkpoint && run.hooks.checkpoint && run.hooks.wants_checkpoint()) {
             fill_outcome(run);
             run.hooks.checkpoint(run.outcome);
@@ -241,13 +248,16 @@ BiasOutcome run_bias_points(const Structure& structure, const BiasRequest& reque
     require(!request.biases.empty(), "no bias is asked for");
     Run run{structure, request, hooks, metallurgical_junctions(structure), 0, {}, {}, {}, {}, {}, 0, 0};
     run.outcome.warnings = remarks(structure);
-    run.outcome.warnings.insert(run.outcome.warnings.begin(), structure.warnings.begin(), structure.warnings.end());
+    run.outcome.warnings.insert(run.outcome.warnings.begin(), structure.warnings.begin(),
+                                structure.warnings.end());
     for (const Metallurgical& junction : run.junctions)
-        run.outcome.junctions.push_back({junction.depth, junction.p_above, junction.gradient.value_or(no_value)});
+        run.outcome.junctions.push_back(
+            {junction.depth, junction.p_above, junction.gradient.value_or(no_value)});
     run.outcome.sheet_resistances = sheet_resistances(structure);
 
     run.tell(0, "laying the mesh");
-    AdaptedMesh adapted = adapted_mesh(structure, request.biases, request.max_current, [&] { return run.stop(); });
+    AdaptedMesh adapted =
+        adapted_mesh(structure, request.biases, request.max_current, [&] { return run.stop(); });
     run.meshing_iterations = adapted.iterations;
     run.meshing_rejected = adapted.rejected;
     run.levels = nested_levels(structure, std::move(adapted.mesh), request.error_bars);

@@ -1,5 +1,5 @@
-// The analysis behind `bands` and `iv`: the solved structure at a list of biases, with error bars from nested meshes.
-// Not for: how a bias is reached (solvers/sweep.hpp) or how results are written (io).
+// The analysis behind `bands` and `iv`: the solved structure at a list of biases, with error bars from nested
+// meshes. Not for: how a bias is reached (solvers/sweep.hpp) or how results are written (io).
 // SPDX-License-Identifier: MIT
 #pragma once
 
@@ -19,7 +19,8 @@ struct BiasRequest {
     std::vector<double> biases;
     /// |current density| at which a sweep ends [A/m^2].
     double max_current = 1e10;
-    /// Depth [m] of the junction that per-junction figures speak of; none: the one that drops most of the bias.
+    /// Depth [m] of the junction that per-junction figures speak of; none: the one that drops most of the
+    /// bias.
     std::optional<double> junction_depth;
     /// Without error bars one mesh is solved, with them three nested ones.
     bool error_bars = true;
@@ -62,10 +63,10 @@ struct Hooks {
     std::function<void(const BiasOutcome&)> checkpoint;
 };
 
-/// Solves a structure at the requested biases. Point columns: bias [V], current_density, current (with an area),
-/// junction_voltage, peak_field, peak_field_depth, extrapolated_field, depletion_top_edge, depletion_bottom_edge,
-/// depletion_width. Figures: built_in_potential, contact_potential.
-/// Errors: none for a solver that stops (see BiasOutcome::end); ContractError for a structure with complaints.
+/// Solves a structure at the requested biases. Point columns: bias [V], current_density, current (with an
+/// area), junction_voltage, peak_field, peak_field_depth, extrapolated_field, depletion_top_edge,
+/// depletion_bottom_edge, depletion_width. Figures: built_in_potential, contact_potential. Errors: none for a
+/// solver that stops (see BiasOutcome::end); ContractError for a structure with complaints.
 BiasOutcome run_bias_points(const Structure& structure, const BiasRequest& request, const Hooks& hooks = {});
 
 }  // namespace bandwright

@@ -1,5 +1,5 @@
-// The tree keeps its own rules: arrows between rooms, sources behind numbers, one version. Sizes are printed, not judged.
-// SPDX-License-Identifier: MIT
+// The tree keeps its own rules: arrows between rooms, sources behind numbers, one version. Sizes are printed,
+// not judged. SPDX-License-Identifier: MIT
 #include <gtest/gtest.h>
 
 #include <cstdio>
@@ -26,7 +26,8 @@ std::string read(const fs::path& path) {
 std::vector<fs::path> sources(const std::string& folder) {
     std::vector<fs::path> list;
     for (const auto& entry : fs::recursive_directory_iterator(root / folder))
-        if (entry.path().extension() == ".hpp" || entry.path().extension() == ".cpp") list.push_back(entry.path());
+        if (entry.path().extension() == ".hpp" || entry.path().extension() == ".cpp")
+            list.push_back(entry.path());
     return list;
 }
 
@@ -41,7 +42,8 @@ const std::map<std::string, std::vector<std::string>> forbidden{
     {"core/discretization", {"core/figures/"}},
 };
 // Libraries that one file alone may include.
-const std::map<std::string, std::string> single{{"kinsol/", "solvers/kinsol_session.cpp"}, {"hdf5", "io/results/hdf5_file.cpp"}};
+const std::map<std::string, std::string> single{{"kinsol/", "solvers/kinsol_session.cpp"},
+                                                {"hdf5", "io/results/hdf5_file.cpp"}};
 
 }  // namespace
 
@@ -56,7 +58,8 @@ TEST(Arrows, point_one_way) {
                 if (!std::regex_search(line, match, include)) continue;
                 const std::string name = match[1];
                 for (const std::string& beginning : names)
-                    EXPECT_FALSE(name.starts_with(beginning)) << fs::relative(path, root).string() << ":" << number << " includes " << name;
+                    EXPECT_FALSE(name.starts_with(beginning))
+                        << fs::relative(path, root).string() << ":" << number << " includes " << name;
                 for (const auto& [library, owner] : single) {
                     if (!name.starts_with(library)) continue;
                     EXPECT_EQ(fs::relative(path, root).string(), owner) << name;
@@ -69,7 +72,8 @@ TEST(Sources, every_key_that_code_and_materials_name_is_in_the_list) {
     std::set<std::string> known;
     const std::string list = read(root / "core/references.md");
     const std::regex entry("\\*\\*([A-Za-z0-9]+)\\*\\*:");
-    for (std::sregex_iterator it(list.begin(), list.end(), entry), end; it != end; ++it) known.insert((*it)[1]);
+    for (std::sregex_iterator it(list.begin(), list.end(), entry), end; it != end; ++it)
+        known.insert((*it)[1]);
     EXPECT_GT(known.size(), 20u);
     const std::regex cited("\\[([A-Z][A-Za-z]+[0-9]{4})\\]");
     int seen = 0;
@@ -87,14 +91,17 @@ TEST(Sources, every_key_that_code_and_materials_name_is_in_the_list) {
         for (std::sregex_iterator it(text.begin(), text.end(), source), end; it != end; ++it) {
             const std::string key = (*it)[1];
             // A value without a published source says so in words ("common practice, no source"; "estimate").
-            if (!std::isupper(static_cast<unsigned char>(key[0])) || key.find_first_of("0123456789") == std::string::npos) continue;
+            if (!std::isupper(static_cast<unsigned char>(key[0])) ||
+                key.find_first_of("0123456789") == std::string::npos)
+                continue;
             EXPECT_TRUE(known.contains(key)) << file.path() << " cites " << key;
         }
     }
 }
 
 TEST(Version, is_the_same_everywhere) {
-    EXPECT_NE(read(root / "CMakeLists.txt").find(std::string("VERSION ") + bandwright::version + " "), std::string::npos);
+    EXPECT_NE(read(root / "CMakeLists.txt").find(std::string("VERSION ") + bandwright::version + " "),
+              std::string::npos);
 }
 
 TEST(Headers, say_what_they_are_for_and_not_for) {
@@ -113,7 +120,8 @@ TEST(Sizes, are_printed) {
         for (const fs::path& path : sources(folder)) {
             const std::string text = read(path);
             const auto lines = std::count(text.begin(), text.end(), '\n');
-            if (lines > 400) std::printf("  %ld lines: %s\n", static_cast<long>(lines), fs::relative(path, root).c_str());
+            if (lines > 400)
+                std::printf("  %ld lines: %s\n", static_cast<long>(lines), fs::relative(path, root).c_str());
         }
     SUCCEED();
 }

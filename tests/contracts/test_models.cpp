@@ -35,7 +35,8 @@ TEST(MobilityModels, fall_with_temperature_at_low_doping) {
     for (const std::string& model : si.mobility_models)
         for (const Carrier carrier : {Carrier::electron, Carrier::hole}) {
             const Doping doping{1e20, 0, 0};
-            EXPECT_GT(mobility(carrier, *mobility_named(model), si, doping, 250), mobility(carrier, *mobility_named(model), si, doping, 400));
+            EXPECT_GT(mobility(carrier, *mobility_named(model), si, doping, 250),
+                      mobility(carrier, *mobility_named(model), si, doping, 400));
         }
 }
 

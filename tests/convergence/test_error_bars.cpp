@@ -1,7 +1,7 @@
-// Printed error bars against true errors over 100 structures drawn by a fixed generator: the true error is taken from a
-// mesh on which every cell is split into four. Figure by figure, among those whose true error exceeds 1e-12 of the value,
-// at least 95 % are covered and the median of printed over true error lies between 1 and 10.
-// BANDWRIGHT_ERROR_BAR_SEEDS sets another count; the table is printed.
+// Printed error bars against true errors over 100 structures drawn by a fixed generator: the true error is
+// taken from a mesh on which every cell is split into four. Figure by figure, among those whose true error
+// exceeds 1e-12 of the value, at least 95 % are covered and the median of printed over true error lies
+// between 1 and 10. BANDWRIGHT_ERROR_BAR_SEEDS sets another count; the table is printed.
 // SPDX-License-Identifier: MIT
 #include <gtest/gtest.h>
 
@@ -50,7 +50,9 @@ TEST(ErrorBars, cover_true_errors_and_are_not_much_larger) {
         const std::vector<double> biases = random_biases(seed);
         // Stacks with several floating regions can take minutes; they are told apart, not judged.
         const auto start = std::chrono::steady_clock::now();
-        const auto too_long = [&] { return std::chrono::steady_clock::now() - start > std::chrono::seconds(12); };
+        const auto too_long = [&] {
+            return std::chrono::steady_clock::now() - start > std::chrono::seconds(12);
+        };
         const AdaptedMesh adapted = adapted_mesh(s, biases, 1e10, too_long);
         if (!adapted.ok || too_long()) {
             unsolved += static_cast<int>(biases.size()) + 1;
@@ -68,13 +70,16 @@ TEST(ErrorBars, cover_true_errors_and_are_not_much_larger) {
         all.insert(all.end(), biases.begin(), biases.end());
         for (const double bias : all) {
             BiasWalk walk(systems[0]);
-            if (!walk.start() || walk.walk_to(bias / systems[0].thermal_voltage, 1e10 / 1.6e-19, too_long) != BiasWalk::Arrival::arrived) {
+            if (!walk.start() || walk.walk_to(bias / systems[0].thermal_voltage, 1e10 / 1.6e-19, too_long) !=
+                                     BiasWalk::Arrival::arrived) {
                 ++unsolved;
-                if (wanted) std::printf("  seed %u, %g V not reached: %s\n", seed, bias, walk.message().c_str());
+                if (wanted)
+                    std::printf("  seed %u, %g V not reached: %s\n", seed, bias, walk.message().c_str());
                 continue;
             }
             const auto figures = [&](const DiscreteSystem& system, BiasWalk& at) {
-                return point_figures(system, at.state(), at.equations(), junctions, 0, at.report().iteration_error);
+                return point_figures(system, at.state(), at.equations(), junctions, 0,
+                                     at.report().iteration_error);
             };
             std::vector<PointFigures> nested{figures(systems[0], walk)};
             State guess = walk.state();
@@ -89,7 +94,8 @@ TEST(ErrorBars, cover_true_errors_and_are_not_much_larger) {
             BiasWalk truth(truth_system);
             if (!truth.start_from(fine, walk.voltage())) {
                 ++unsolved;
-                if (wanted) std::printf("  seed %u, %g V: the four times finer mesh is not solved\n", seed, bias);
+                if (wanted)
+                    std::printf("  seed %u, %g V: the four times finer mesh is not solved\n", seed, bias);
                 continue;
             }
             const PointFigures exact = figures(truth_system, truth);
@@ -104,8 +110,9 @@ TEST(ErrorBars, cover_true_errors_and_are_not_much_larger) {
                 if (true_error <= errors[k])
                     ++tally.covered;
                 else if (wanted)
-                    std::printf("  seed %u, %g V, %s: value %.10g, printed %.2g, true %.2g (%zu nodes)\n", seed, bias,
-                                info(static_cast<PointFigure>(k)).name, value, errors[k], true_error, adapted.mesh.nodes());
+                    std::printf("  seed %u, %g V, %s: value %.10g, printed %.2g, true %.2g (%zu nodes)\n",
+                                seed, bias, info(static_cast<PointFigure>(k)).name, value, errors[k],
+                                true_error, adapted.mesh.nodes());
                 tally.ratios.push_back(errors[k] / true_error);
             }
         }

@@ -10,9 +10,11 @@
 
 namespace bandwright::plain {
 
-/// A material with given gap [eV]; densities of states 2.8e19 and 2.5e19 cm^-3, mobilities 1000 and 450 cm2/Vs,
-/// lifetimes 1e-7 s, Auger and radiative coefficients of silicon's size. All numbers invented for tests.
-inline Material material(const std::string& name, double gap, double affinity = 4.05, double permittivity = 11.7) {
+/// A material with given gap [eV]; densities of states 2.8e19 and 2.5e19 cm^-3, mobilities 1000 and 450
+/// cm2/Vs, lifetimes 1e-7 s, Auger and radiative coefficients of silicon's size. All numbers invented for
+/// tests.
+inline Material material(const std::string& name, double gap, double affinity = 4.05,
+                         double permittivity = 11.7) {
     Material m;
     m.name = name;
     const auto put = [&](const char* key, double value, Unit unit) {
@@ -41,7 +43,8 @@ struct Part {
 };
 
 /// A stack of uniform layers.
-inline Structure stack(const std::vector<Part>& parts, std::vector<Material> materials = {material("test", 1.12)},
+inline Structure stack(const std::vector<Part>& parts,
+                       std::vector<Material> materials = {material("test", 1.12)},
                        Statistics statistics = Statistics::boltzmann) {
     Structure s;
     s.title = "test";

@@ -25,7 +25,9 @@ class TemporaryFolder {
     TemporaryFolder& operator=(const TemporaryFolder&) = delete;
     const std::filesystem::path& path() const { return path_; }
 
-    void write(const std::string& name, const std::string& text) const { std::ofstream(path_ / name) << text; }
+    void write(const std::string& name, const std::string& text) const {
+        std::ofstream(path_ / name) << text;
+    }
     std::string read(const std::string& name) const {
         std::ostringstream text;
         text << std::ifstream(path_ / name).rdbuf();
@@ -44,7 +46,8 @@ struct Ran {
 
 /// Runs a shell command in a folder.
 inline Ran run_in(const TemporaryFolder& folder, const std::string& command) {
-    const std::string line = "cd '" + folder.path().string() + "' && ( " + command + " ) >stdout.txt 2>stderr.txt </dev/null";
+    const std::string line =
+        "cd '" + folder.path().string() + "' && ( " + command + " ) >stdout.txt 2>stderr.txt </dev/null";
     const int code = std::system(line.c_str());
     return {WIFEXITED(code) ? WEXITSTATUS(code) : -1, folder.read("stdout.txt"), folder.read("stderr.txt")};
 }

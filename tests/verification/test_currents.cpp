@@ -11,10 +11,12 @@ using namespace bandwright::set_a;
 
 namespace {
 
-double per_area(const BiasOutcome& outcome, std::size_t index = 0) { return point(outcome, "current_density", index) / ampere_per_cm2; }
+double per_area(const BiasOutcome& outcome, std::size_t index = 0) {
+    return point(outcome, "current_density", index) / ampere_per_cm2;
+}
 
-// Saturation current of one ohmic side of width w [cm], doping N [cm^-3], D [cm2/s], lifetime tau [s]: q ni^2 D/(L N) coth(w/L)
-// [Shockley1949].
+// Saturation current of one ohmic side of width w [cm], doping N [cm^-3], D [cm2/s], lifetime tau [s]: q ni^2
+// D/(L N) coth(w/L) [Shockley1949].
 double saturation(double N, double D, double tau, double w) {
     const double L = std::sqrt(D * tau);
     return constants::elementary_charge * 1e20 * D / (L * N) / std::tanh(w / L);
@@ -23,10 +25,11 @@ double saturation(double N, double D, double tau, double w) {
 }  // namespace
 
 TEST(Bar, obeys_ohm) {
-    // n 1e15, 1400 cm2/Vs, 100 um, 1 V; exact with contacts in equilibrium: 22.430473 A/cm2 (electrons alone; holes are 1e-10
-    // of that).
+    // n 1e15, 1400 cm2/Vs, 100 um, 1 V; exact with contacts in equilibrium: 22.430473 A/cm2 (electrons alone;
+    // holes are 1e-10 of that).
     Options options;
-    options.material = R"("relative_permittivity": 11.7, "electron_affinity": "4.05 eV", "bandgap": "1.0714757279819708 eV",
+    options.material =
+        R"("relative_permittivity": 11.7, "electron_affinity": "4.05 eV", "bandgap": "1.0714757279819708 eV",
         "conduction_band_effective_density": "1e19 cm-3", "valence_band_effective_density": "1e19 cm-3",
         "electron_mobility": "1400 cm2 V-1 s-1", "hole_mobility": "450 cm2 V-1 s-1")";
     const BiasOutcome outcome = solve(uniform_stack({{100, 1e15}}, options), {1});
@@ -34,9 +37,10 @@ TEST(Bar, obeys_ohm) {
 }
 
 TEST(GenerationCurrent, in_reverse_equals_the_layer_integral_plus_diffusion) {
-    // Layer current q integral U dpsi/|E|, exact (tests/reference/recombination_layer.py): 1e17/1e17, tau 1e-7 s. The textbook
-    // q ni W/(2 tau) is 4.3 times larger at -0.5 V. Diffusion from both quasi-neutral parts, ohmic ends, with the solved edges.
-    // Tolerance 0.02 %: the split into a layer and two neutral parts neglects generation near the edges at that size.
+    // Layer current q integral U dpsi/|E|, exact (tests/reference/recombination_layer.py): 1e17/1e17, tau
+    // 1e-7 s. The textbook q ni W/(2 tau) is 4.3 times larger at -0.5 V. Diffusion from both quasi-neutral
+    // parts, ohmic ends, with the solved edges. Tolerance 0.02 %: the split into a layer and two neutral
+    // parts neglects generation near the edges at that size.
     Options options;
     options.lifetime = "1e-7 s";
     options.tolerance = 1e-5;
@@ -46,15 +50,18 @@ TEST(GenerationCurrent, in_reverse_equals_the_layer_integral_plus_diffusion) {
     for (std::size_t k = 0; k < biases.size(); ++k) {
         const double width = (2e-6 - 0.5 * point(outcome, "depletion_width", k)) * 100;
         const double Vt = thermal_voltage;
-        const double diffusion = -(saturation(1e17, 1000 * Vt, 1e-7, width) + saturation(1e17, 450 * Vt, 1e-7, width));
+        const double diffusion =
+            -(saturation(1e17, 1000 * Vt, 1e-7, width) + saturation(1e17, 450 * Vt, 1e-7, width));
         EXPECT_NEAR(per_area(outcome, k) / (layer[k] + diffusion), 1, 2e-4) << biases[k];
-        std::printf("  %5.1f V: %.9e A/cm2, layer + diffusion %.9e, ratio - 1 = %.1e\n", biases[k], per_area(outcome, k), layer[k] + diffusion,
+        std::printf("  %5.1f V: %.9e A/cm2, layer + diffusion %.9e, ratio - 1 = %.1e\n", biases[k],
+                    per_area(outcome, k), layer[k] + diffusion,
                     per_area(outcome, k) / (layer[k] + diffusion) - 1);
     }
 }
 
 TEST(GenerationCurrent, forward_of_the_layer_has_its_own_ideality) {
-    // The layer's current alone, 0.2 to 0.4 V; 1 % because the neutral parts' recombination is only estimated.
+    // The layer's current alone, 0.2 to 0.4 V; 1 % because the neutral parts' recombination is only
+    // estimated.
     Options options;
     options.lifetime = "1e-7 s";
     const std::vector<double> biases{0.2, 0.3, 0.4};
@@ -63,12 +70,14 @@ TEST(GenerationCurrent, forward_of_the_layer_has_its_own_ideality) {
     for (std::size_t k = 0; k < biases.size(); ++k) {
         const double width = (2e-6 - 0.5 * point(outcome, "depletion_width", k)) * 100, Vt = thermal_voltage;
         const double J0 = saturation(1e17, 1000 * Vt, 1e-7, width) + saturation(1e17, 450 * Vt, 1e-7, width);
-        EXPECT_NEAR(per_area(outcome, k) / (layer[k] + J0 * std::expm1(biases[k] / Vt)), 1, 0.01) << biases[k];
+        EXPECT_NEAR(per_area(outcome, k) / (layer[k] + J0 * std::expm1(biases[k] / Vt)), 1, 0.01)
+            << biases[k];
     }
 }
 
 TEST(IdealDiode, short_side_without_recombination_is_ni_squared_over_the_gummel_number) {
-    // J0 = q ni^2 D/(N W) for each side [MollRoss1956], W the neutral width at that bias; 0.5 % for where exactly it begins.
+    // J0 = q ni^2 D/(N W) for each side [MollRoss1956], W the neutral width at that bias; 0.5 % for where
+    // exactly it begins.
     const BiasOutcome outcome = solve(uniform_stack({{3, -1e17}, {3, 1e17}}), {0.3, 0.4});
     for (const std::size_t k : {0u, 1u}) {
         const double width = (3e-6 - 0.5 * point(outcome, "depletion_width", k)) * 100, Vt = thermal_voltage;
@@ -78,21 +87,25 @@ TEST(IdealDiode, short_side_without_recombination_is_ni_squared_over_the_gummel_
 }
 
 TEST(IdealDiode, identity_of_moll_and_ross_holds_inside_the_solution) {
-    // J_n integral exp(-psi/Vt) dx = q D ni (exp(-phi_n(0)/Vt) - exp(-phi_n(L)/Vt)) for any profile without recombination;
-    // exact for the scheme but for the trapezoid of the integral (second order).
+    // J_n integral exp(-psi/Vt) dx = q D ni (exp(-phi_n(0)/Vt) - exp(-phi_n(L)/Vt)) for any profile without
+    // recombination; exact for the scheme but for the trapezoid of the integral (second order).
     Options options;
     options.tolerance = 1e-6;
-    const BiasOutcome outcome =
-        solve(one_layer(3, {R"({"kind": "gaussian", "dopant": "acceptor", "peak": "1e18 cm-3", "depth": "0 um", "straggle": "0.4 um"})",
-                            R"({"kind": "uniform", "dopant": "donor", "concentration": "1e16 cm-3"})"},
-                        options),
-              {0.3});
-    const Curve intrinsic = curve(outcome, "intrinsic_level"), level = curve(outcome, "electron_quasi_fermi_level");
+    const BiasOutcome outcome = solve(
+        one_layer(
+            3,
+            {R"({"kind": "gaussian", "dopant": "acceptor", "peak": "1e18 cm-3", "depth": "0 um", "straggle": "0.4 um"})",
+             R"({"kind": "uniform", "dopant": "donor", "concentration": "1e16 cm-3"})"},
+            options),
+        {0.3});
+    const Curve intrinsic = curve(outcome, "intrinsic_level"),
+                level = curve(outcome, "electron_quasi_fermi_level");
     const Curve current = curve(outcome, "electron_current_density");
     double integral = 0;
     const double Vt = thermal_voltage;
     for (std::size_t k = 0; k + 1 < intrinsic.depth.size(); ++k)
-        integral += 0.5 * (intrinsic.depth[k + 1] - intrinsic.depth[k]) * (std::exp(intrinsic.value[k] / Vt) + std::exp(intrinsic.value[k + 1] / Vt));
+        integral += 0.5 * (intrinsic.depth[k + 1] - intrinsic.depth[k]) *
+                    (std::exp(intrinsic.value[k] / Vt) + std::exp(intrinsic.value[k + 1] / Vt));
     const double right = constants::elementary_charge * electron_diffusivity * intrinsic_density *
                          (std::exp(level.value.back() / Vt) - std::exp(level.value.front() / Vt));
     EXPECT_NEAR(current.value[intrinsic.depth.size() / 2] * integral / right, 1, 1e-5);

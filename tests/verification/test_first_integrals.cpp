@@ -1,10 +1,10 @@
-// Fields and potentials of two uniform regions in contact, against the first integral of the Poisson-Boltzmann equation.
+// Fields and potentials of two uniform regions in contact, against the first integral of the
+// Poisson-Boltzmann equation.
 //
-// d(eps E^2/2)/d(psi) = -rho integrates in closed form; the numbers below are 15-digit values of it, recomputed by
-// tests/reference/poisson_boltzmann_plane.py. Set A (set_a.hpp). Tolerances: the printed error bar, which the tests of
-// error bars hold to account, or the bound stated at the test.
-// Source: elementary first integral (for example [SzeNg2007] ch. 2).
-// SPDX-License-Identifier: MIT
+// d(eps E^2/2)/d(psi) = -rho integrates in closed form; the numbers below are 15-digit values of it,
+// recomputed by tests/reference/poisson_boltzmann_plane.py. Set A (set_a.hpp). Tolerances: the printed error
+// bar, which the tests of error bars hold to account, or the bound stated at the test. Source: elementary
+// first integral (for example [SzeNg2007] ch. 2). SPDX-License-Identifier: MIT
 #include <gtest/gtest.h>
 
 #include <cmath>
@@ -23,10 +23,13 @@ struct PlaneRow {
 };
 
 // Layers of at least 30 Debye lengths, so that the ends are neutral to 1e-13.
-double thickness_um(double doping) { return std::max(0.2, 40 * debye_length(std::abs(doping) * per_cm3) / um); }
+double thickness_um(double doping) {
+    return std::max(0.2, 40 * debye_length(std::abs(doping) * per_cm3) / um);
+}
 
 BiasOutcome solved(double upper, double lower, Options options, std::vector<double> biases = {0}) {
-    return solve(uniform_stack({{thickness_um(upper), upper}, {thickness_um(lower), lower}}, options), biases);
+    return solve(uniform_stack({{thickness_um(upper), upper}, {thickness_um(lower), lower}}, options),
+                 biases);
 }
 
 double plane_field(const BiasOutcome& outcome, double upper, std::size_t index = 0) {
@@ -41,7 +44,8 @@ TEST_P(Plane, field_lies_within_its_error_bar_and_the_bar_is_narrow) {
     const PlaneRow row = GetParam();
     const BiasOutcome outcome = solved(row.upper, row.lower, {});
     const double field = plane_field(outcome, row.upper);
-    // Second order with a mesh aimed at 1e-4: twice the tolerance bounds what the plane's own node may be off.
+    // Second order with a mesh aimed at 1e-4: twice the tolerance bounds what the plane's own node may be
+    // off.
     EXPECT_NEAR(field / row.field, 1, 2e-4);
     if (outcome.points.find("peak_field")) {
         const double error = point_error(outcome, "peak_field") / volt_per_cm;
@@ -53,8 +57,10 @@ TEST_P(Plane, field_lies_within_its_error_bar_and_the_bar_is_narrow) {
 
 INSTANTIATE_TEST_SUITE_P(
     Rows, Plane,
-    testing::Values(PlaneRow{-1e15, 1e15, 9168.79318016797, 2 * 0.297632146664244}, PlaneRow{-1e16, 1e16, 32012.3798137894, 2 * 0.357158575994016},
-                    PlaneRow{-1e17, 1e17, 109950.831479477, 2 * 0.416685005326322}, PlaneRow{-1e18, 1e18, 373235.145291354, 2 * 0.476211434658654},
+    testing::Values(PlaneRow{-1e15, 1e15, 9168.79318016797, 2 * 0.297632146664244},
+                    PlaneRow{-1e16, 1e16, 32012.3798137894, 2 * 0.357158575994016},
+                    PlaneRow{-1e17, 1e17, 109950.831479477, 2 * 0.416685005326322},
+                    PlaneRow{-1e18, 1e18, 373235.145291354, 2 * 0.476211434658654},
                     PlaneRow{-1e17, 1e16, 45319.5343758320, 0.416685005326322 + 0.357158575994016},
                     PlaneRow{-1e18, 1e16, 67635.6103574171, 0.476211434658654 + 0.357158575994016},
                     PlaneRow{-1e19, 1e16, 176283.765315047, 0.535737863990985 + 0.357158575994016},
@@ -62,8 +68,10 @@ INSTANTIATE_TEST_SUITE_P(
                     PlaneRow{-1e19, 1e14, 171556.405461194, 0.535737863990985 + 0.238105717587847},
                     PlaneRow{-1e16, 1e15, 13157.3343432198, 0.357158575994016 + 0.297632146664244},
                     // hi-lo junctions: no junction to hide behind
-                    PlaneRow{1e18, 1e15, 53915.3642017034, 0.178579287994410}, PlaneRow{1e19, 1e14, 171498.280287275, 0.297632146403139},
-                    PlaneRow{1e17, 1e16, 13242.2306480509, 0.0595264293323061}, PlaneRow{2e16, 1e16, 2610.53432533963, 0.0179192407637847},
+                    PlaneRow{1e18, 1e15, 53915.3642017034, 0.178579287994410},
+                    PlaneRow{1e19, 1e14, 171498.280287275, 0.297632146403139},
+                    PlaneRow{1e17, 1e16, 13242.2306480509, 0.0595264293323061},
+                    PlaneRow{2e16, 1e16, 2610.53432533963, 0.0179192407637847},
                     PlaneRow{-1e19, -1e15, 171379.495109454, 0.238105717326742}));
 
 TEST(PlaneField, of_1e19_on_1e15_reaches_a_millionth_at_tolerance_1e_7) {
@@ -73,8 +81,8 @@ TEST(PlaneField, of_1e19_on_1e15_reaches_a_millionth_at_tolerance_1e_7) {
 }
 
 TEST(PlaneField, under_bias_follows_the_first_integral_with_a_shifted_intrinsic_density) {
-    // Flat quasi-Fermi levels across the layer: exact but for the currents, which bend them by less than 1e-9 kT/q in reverse;
-    // at +0.3 V the drop across the quasi-neutral parts is of the same order.
+    // Flat quasi-Fermi levels across the layer: exact but for the currents, which bend them by less than 1e-9
+    // kT/q in reverse; at +0.3 V the drop across the quasi-neutral parts is of the same order.
     const BiasOutcome symmetric = solve(uniform_stack({{1, -1e17}, {1, 1e17}}), {-1, -5, -20, 0.3});
     const double expected[] = {165997.309328294, 299029.752347108, 566928.227914078, 86310.2639907876};
     for (std::size_t k = 0; k < 4; ++k) {
@@ -86,22 +94,29 @@ TEST(PlaneField, under_bias_follows_the_first_integral_with_a_shifted_intrinsic_
     const double one_sided_expected[] = {174800.276002827, 199693.983675202};
     for (std::size_t k = 0; k < 2; ++k) {
         const double field = std::abs(curve(one_sided, "electric_field", k).at(0.2 * um)) / volt_per_cm;
-        EXPECT_LE(std::abs(field - one_sided_expected[k]), point_error(one_sided, "peak_field", k) / volt_per_cm) << k;
+        EXPECT_LE(std::abs(field - one_sided_expected[k]),
+                  point_error(one_sided, "peak_field", k) / volt_per_cm)
+            << k;
     }
 }
 
 TEST(PlaneField, with_fermi_dirac_statistics_follows_the_first_integral_of_order_three_halves) {
-    // Nc 2.86e19, Nv 3.10e19 cm^-3, gap 1.12 eV, 300 K: p + n replaced by Nc F_3/2 + Nv F_3/2 in the first integral.
+    // Nc 2.86e19, Nv 3.10e19 cm^-3, gap 1.12 eV, 300 K: p + n replaced by Nc F_3/2 + Nv F_3/2 in the first
+    // integral.
     Options options;
     options.statistics = "fermi-dirac";
     options.material = R"("relative_permittivity": 11.7, "electron_affinity": "4.05 eV", "bandgap": "1.12 eV",
         "conduction_band_effective_density": "2.86e19 cm-3", "valence_band_effective_density": "3.10e19 cm-3",
         "electron_mobility": "1000 cm2 V-1 s-1", "hole_mobility": "450 cm2 V-1 s-1")";
-    const PlaneRow rows[] = {{-1e17, 1e17, 109396.642834, 0.8255408745404}, {-1e19, 1e19, 1252878.26354, 1.069700714051},
-                             {-1e20, 1e20, 4237001.74309, 1.241449680261}, {-1e20, 1e16, 632438.487121, 0.9728051951479}};
+    const PlaneRow rows[] = {{-1e17, 1e17, 109396.642834, 0.8255408745404},
+                             {-1e19, 1e19, 1252878.26354, 1.069700714051},
+                             {-1e20, 1e20, 4237001.74309, 1.241449680261},
+                             {-1e20, 1e16, 632438.487121, 0.9728051951479}};
     for (const PlaneRow& row : rows) {
         const BiasOutcome outcome = solved(row.upper, row.lower, options);
-        EXPECT_LE(std::abs(plane_field(outcome, row.upper) - row.field), point_error(outcome, "peak_field") / volt_per_cm) << row.upper;
+        EXPECT_LE(std::abs(plane_field(outcome, row.upper) - row.field),
+                  point_error(outcome, "peak_field") / volt_per_cm)
+            << row.upper;
         EXPECT_NEAR(plane_field(outcome, row.upper) / row.field, 1, 3e-4);
         EXPECT_NEAR(figure(outcome, "contact_potential"), row.barrier, 2e-10);
     }

@@ -28,7 +28,8 @@ TEST(Program, writes_a_result_file_named_after_structure_and_command) {
     EXPECT_EQ(ran.err, "");
     // Nothing else is left behind.
     int files = 0;
-    for (const auto& entry : std::filesystem::directory_iterator(folder.path())) files += entry.is_regular_file();
+    for (const auto& entry : std::filesystem::directory_iterator(folder.path()))
+        files += entry.is_regular_file();
     EXPECT_EQ(files, 4);  // structure, result, both streams
 }
 
@@ -45,7 +46,8 @@ TEST(Program, prints_one_json_document_and_nothing_else) {
     EXPECT_LT(document["points"][0]["current_density"], 0);
     EXPECT_GT(document["points"][2]["current_density"], 0);
     // |J(0 V)| below 1e-12 of J at 0.4 V, let alone 0.5 V.
-    EXPECT_LT(std::abs(document["points"][1]["current_density"].get<double>()), 1e-12 * document["points"][2]["current_density"].get<double>());
+    EXPECT_LT(std::abs(document["points"][1]["current_density"].get<double>()),
+              1e-12 * document["points"][2]["current_density"].get<double>());
     EXPECT_EQ(document["units"]["current_density"], "A cm-2");
     EXPECT_GT(document["figures"]["built_in_potential"]["error"], 0);
 }
@@ -67,14 +69,18 @@ TEST(Program, exit_statuses) {
 
 TEST(Program, suggests_the_option_and_the_command_that_were_meant) {
     const TemporaryFolder folder;
-    EXPECT_EQ(run_in(folder, program + " ivv").err, "bandwright: there is no command \"ivv\"; did you mean \"iv\"? The commands are inspect, ledger, bands, iv\n");
-    EXPECT_EQ(run_in(folder, program + " iv d.json --form 3").err, "bandwright: iv has no option \"--form\"; did you mean \"--from\"?\n");
+    EXPECT_EQ(run_in(folder, program + " ivv").err,
+              "bandwright: there is no command \"ivv\"; did you mean \"iv\"? The commands are inspect, "
+              "ledger, bands, iv\n");
+    EXPECT_EQ(run_in(folder, program + " iv d.json --form 3").err,
+              "bandwright: iv has no option \"--form\"; did you mean \"--from\"?\n");
 }
 
 TEST(Program, ends_at_the_current_limit_with_a_warning_and_status_0) {
     const TemporaryFolder folder;
     folder.write("diode.json", diode);
-    const Ran ran = run_in(folder, program + " iv diode.json --from 0 --to 2 --step 0.25 --max-current 10 --json");
+    const Ran ran =
+        run_in(folder, program + " iv diode.json --from 0 --to 2 --step 0.25 --max-current 10 --json");
     EXPECT_EQ(ran.status, 0);
     EXPECT_NE(ran.err.find("the limit of 10"), std::string::npos) << ran.err;
     const auto document = nlohmann::json::parse(ran.out);
@@ -85,7 +91,9 @@ TEST(Program, ends_at_the_current_limit_with_a_warning_and_status_0) {
 TEST(Program, interrupted_saves_what_was_solved) {
     const TemporaryFolder folder;
     folder.write("diode.json", diode);
-    const Ran ran = run_in(folder, "timeout -s INT 1 " + program + " iv diode.json --from 0 --to -40 --points 100000; exit $(( $? == 124 ? 130 : $? ))");
+    const Ran ran = run_in(
+        folder, "timeout -s INT 1 " + program +
+                    " iv diode.json --from 0 --to -40 --points 100000; exit $(( $? == 124 ? 130 : $? ))");
     EXPECT_EQ(ran.status, 130);
     EXPECT_NE(ran.err.find("points are saved in diode.iv.h5"), std::string::npos) << ran.err;
     EXPECT_TRUE(std::filesystem::exists(folder.path() / "diode.iv.h5"));

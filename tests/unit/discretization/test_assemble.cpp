@@ -1,5 +1,5 @@
-// The Jacobian against differences for every model, in random admissible states; a wrong derivative is noticed.
-// SPDX-License-Identifier: MIT
+// The Jacobian against differences for every model, in random admissible states; a wrong derivative is
+// noticed. SPDX-License-Identifier: MIT
 #include "core/discretization/assemble.hpp"
 
 #include <gtest/gtest.h>
@@ -25,7 +25,8 @@ struct Case {
 
 DiscreteSystem system_for(const Case& c) {
     std::vector<Material> materials{plain::material("a", 1.12), plain::material("b", 1.4, 3.9, 10)};
-    Structure s = plain::stack({{2e-7, -3e23}, {3e-7, 2e22, c.two_materials ? 1u : 0u}, {2e-7, 1e25}}, materials, c.statistics);
+    Structure s = plain::stack({{2e-7, -3e23}, {3e-7, 2e22, c.two_materials ? 1u : 0u}, {2e-7, 1e25}},
+                               materials, c.statistics);
     s.models.recombination = c.recombination;
     if (c.surface_velocity) {
         s.top.electron_velocity = 1e3;
@@ -49,9 +50,10 @@ State random_state(const DiscreteSystem& system, unsigned seed) {
     return state;
 }
 
-// Largest disagreement between the analytic and the difference derivative of the balances, relative to the row's largest
-// entry.
-double worst_disagreement(const DiscreteSystem& system, const State& state, std::string& place, double spoil = 0) {
+// Largest disagreement between the analytic and the difference derivative of the balances, relative to the
+// row's largest entry.
+double worst_disagreement(const DiscreteSystem& system, const State& state, std::string& place,
+                          double spoil = 0) {
     Equations at, plus, minus;
     EXPECT_TRUE(assemble(system, state, at));
     BlockTridiagonal matrix = at.jacobian;
@@ -66,20 +68,24 @@ double worst_disagreement(const DiscreteSystem& system, const State& state, std:
             down.unknowns[3 * node + k] -= h;
             assemble(system, up, plus);
             assemble(system, down, minus);
-            for (std::size_t row_node = node > 0 ? node - 1 : 0; row_node <= std::min(node + 1, system.nodes() - 1); ++row_node)
+            for (std::size_t row_node = node > 0 ? node - 1 : 0;
+                 row_node <= std::min(node + 1, system.nodes() - 1); ++row_node)
                 for (std::size_t r = 0; r < 3; ++r) {
                     const std::size_t row = 3 * row_node + r;
                     const double difference = (plus.balance[row] - minus.balance[row]) / (2 * h);
-                    const Block lower = matrix.lower_block(row_node), diagonal = matrix.diagonal_block(row_node), upper = matrix.upper_block(row_node);
+                    const Block lower = matrix.lower_block(row_node),
+                                diagonal = matrix.diagonal_block(row_node),
+                                upper = matrix.upper_block(row_node);
                     const Block& block = row_node == node ? diagonal : row_node < node ? upper : lower;
                     double largest = 0;
                     for (const Block* b : {&lower, &diagonal, &upper})
-                        for (std::size_t j = 0; j < 3; ++j) largest = std::max(largest, std::abs((*b)[3 * r + j]));
+                        for (std::size_t j = 0; j < 3; ++j)
+                            largest = std::max(largest, std::abs((*b)[3 * r + j]));
                     const double error = std::abs(difference - block[3 * r + k]) / largest;
                     if (error > worst) {
                         worst = error;
-                        place = std::string("row ") + names[r] + " of node " + std::to_string(row_node) + ", column " + names[k] +
-                                " of node " + std::to_string(node);
+                        place = std::string("row ") + names[r] + " of node " + std::to_string(row_node) +
+                                ", column " + names[k] + " of node " + std::to_string(node);
                     }
                 }
         }
@@ -94,8 +100,8 @@ TEST_P(Jacobian, equals_differences_in_random_states) {
     const DiscreteSystem system = system_for(GetParam());
     for (unsigned seed = 1; seed <= 3; ++seed) {
         std::string place;
-        // Central differences with 1e-5 kT/q: h^2/6 of third derivatives (1e-10) and rounding 1e-16/1e-5 = 1e-11 times the
-        // size of terms that cancel in a row (up to 1e3 of the diagonal).
+        // Central differences with 1e-5 kT/q: h^2/6 of third derivatives (1e-10) and rounding 1e-16/1e-5 =
+        // 1e-11 times the size of terms that cancel in a row (up to 1e3 of the diagonal).
         EXPECT_LT(worst_disagreement(system, random_state(system, seed), place), 2e-7) << place;
     }
 }
@@ -108,13 +114,14 @@ TEST_P(Jacobian, with_a_wrong_entry_is_noticed) {
 
 INSTANTIATE_TEST_SUITE_P(
     AllModels, Jacobian,
-    testing::Values(Case{"boltzmann_without_recombination", Statistics::boltzmann, {}, false, false},
-                    Case{"boltzmann_srh", Statistics::boltzmann, {"srh"}, false, false},
-                    Case{"boltzmann_auger", Statistics::boltzmann, {"auger"}, false, true},
-                    Case{"boltzmann_radiative", Statistics::boltzmann, {"radiative"}, true, false},
-                    Case{"fermi_dirac_without_recombination", Statistics::fermi_dirac, {}, false, true},
-                    Case{"fermi_dirac_srh", Statistics::fermi_dirac, {"srh"}, true, true},
-                    Case{"fermi_dirac_all", Statistics::fermi_dirac, {"srh", "auger", "radiative"}, true, false}),
+    testing::Values(
+        Case{"boltzmann_without_recombination", Statistics::boltzmann, {}, false, false},
+        Case{"boltzmann_srh", Statistics::boltzmann, {"srh"}, false, false},
+        Case{"boltzmann_auger", Statistics::boltzmann, {"auger"}, false, true},
+        Case{"boltzmann_radiative", Statistics::boltzmann, {"radiative"}, true, false},
+        Case{"fermi_dirac_without_recombination", Statistics::fermi_dirac, {}, false, true},
+        Case{"fermi_dirac_srh", Statistics::fermi_dirac, {"srh"}, true, true},
+        Case{"fermi_dirac_all", Statistics::fermi_dirac, {"srh", "auger", "radiative"}, true, false}),
     [](const auto& information) { return std::string(information.param.name); });
 
 TEST(Assemble, equilibrium_has_no_flux_at_all) {

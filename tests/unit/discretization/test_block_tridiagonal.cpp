@@ -15,8 +15,8 @@ namespace {
 // Reproducible numbers in (-1, 1) that do not depend on the standard library's distributions.
 double next(std::mt19937_64& engine) { return static_cast<double>(engine() >> 11) * 0x1p-52 - 1; }
 
-// Fluxes that do not change when all unknowns are shifted alike, as in a chain of boxes, and shunts that make the chain
-// solvable.
+// Fluxes that do not change when all unknowns are shifted alike, as in a chain of boxes, and shunts that make
+// the chain solvable.
 BlockTridiagonal random_chain(std::size_t nodes, std::mt19937_64& engine) {
     BlockTridiagonal matrix;
     matrix.resize(nodes);
@@ -46,10 +46,12 @@ TEST(BlockTridiagonal, equals_a_dense_solver_with_full_pivoting) {
         const auto n = static_cast<Eigen::Index>(3 * nodes);
         Eigen::MatrixXd dense = Eigen::MatrixXd::Zero(n, n);
         for (std::size_t k = 0; k < nodes; ++k) {
-            const Block lower = matrix.lower_block(k), diagonal = matrix.diagonal_block(k), upper = matrix.upper_block(k);
+            const Block lower = matrix.lower_block(k), diagonal = matrix.diagonal_block(k),
+                        upper = matrix.upper_block(k);
             for (Eigen::Index i = 0; i < 3; ++i)
                 for (Eigen::Index j = 0; j < 3; ++j) {
-                    const auto row = static_cast<Eigen::Index>(3 * k) + i, column = static_cast<Eigen::Index>(3 * k) + j;
+                    const auto row = static_cast<Eigen::Index>(3 * k) + i,
+                               column = static_cast<Eigen::Index>(3 * k) + j;
                     const auto e = static_cast<std::size_t>(3 * i + j);
                     dense(row, column) = diagonal[e];
                     if (k > 0) dense(row, column - 3) = lower[e];
@@ -64,20 +66,24 @@ TEST(BlockTridiagonal, equals_a_dense_solver_with_full_pivoting) {
         matrix.solve(x);
         // Condition numbers of these matrices are below 1e4.
         for (Eigen::Index k = 0; k < n; ++k)
-            EXPECT_NEAR(x[static_cast<std::size_t>(k)], expected(k), 1e-11 * expected.lpNorm<Eigen::Infinity>());
+            EXPECT_NEAR(x[static_cast<std::size_t>(k)], expected(k),
+                        1e-11 * expected.lpNorm<Eigen::Infinity>());
     }
 }
 
 TEST(BlockTridiagonal, names_the_singular_node) {
     std::mt19937_64 engine(3);
     BlockTridiagonal matrix = random_chain(5, engine);
-    for (Block* block : {&matrix.left[1], &matrix.right[1], &matrix.left[2], &matrix.right[2], &matrix.shunt[2]}) block->fill(0);
+    for (Block* block :
+         {&matrix.left[1], &matrix.right[1], &matrix.left[2], &matrix.right[2], &matrix.shunt[2]})
+        block->fill(0);
     EXPECT_EQ(matrix.factorize(), 2u);
 }
 
 TEST(BlockTridiagonal, keeps_a_floating_region_to_full_precision) {
-    // A chain of conductance 1, tied to a set value only through one link of 1e-25: with unit current fed into the far end
-    // every unknown beyond the link is 1e25. An elimination that subtracts loses the link in rounding.
+    // A chain of conductance 1, tied to a set value only through one link of 1e-25: with unit current fed
+    // into the far end every unknown beyond the link is 1e25. An elimination that subtracts loses the link in
+    // rounding.
     const std::size_t nodes = 30, link = 10;
     const double weak = 1e-25;
     BlockTridiagonal matrix;

@@ -19,7 +19,8 @@ double textbook(double speed, double u, double left, double right) {
 }  // namespace
 
 TEST(CellFlux, equals_a_sample_in_amperes) {
-    // D 36 cm2/s, h 1e-5 cm, 5 kT/q, 1e15 and 1e17 cm^-3: -947.1310361711819 A/cm2 (own computation, 17 digits).
+    // D 36 cm2/s, h 1e-5 cm, 5 kT/q, 1e15 and 1e17 cm^-3: -947.1310361711819 A/cm2 (own computation, 17
+    // digits).
     const double u = 5, a = u - std::log(1e17 / 1e15);  // change of phi_n = u - change of ln n
     const CellFlux flux = electron_flux(36 / 1e-5, bernoulli(u), a, 1e15, 1e17);
     EXPECT_NEAR(1.602176634e-19 * flux.value, -947.1310361711819, 947 * 1e-14);
@@ -29,10 +30,12 @@ TEST(CellFlux, equals_the_textbook_form_where_that_does_not_cancel) {
     for (const double u : {-20.0, -3.0, 0.0, 0.01, 4.0, 30.0})
         for (const double a : {-25.0, -2.0, 2.0, 9.0}) {
             const double left = 3e20, right = left * std::exp(u - a);
-            EXPECT_NEAR(electron_flux(7, bernoulli(u), a, left, right).value / textbook(7, u, left, right), 1, 1e-13);
+            EXPECT_NEAR(electron_flux(7, bernoulli(u), a, left, right).value / textbook(7, u, left, right), 1,
+                        1e-13);
             // Holes: ln p changes by a - u; the textbook form with the roles of the ends exchanged.
             const double p_right = left * std::exp(a - u);
-            EXPECT_NEAR(hole_flux(7, bernoulli(u), a, left, p_right).value / textbook(7, u, p_right, left), 1, 1e-13);
+            EXPECT_NEAR(hole_flux(7, bernoulli(u), a, left, p_right).value / textbook(7, u, p_right, left), 1,
+                        1e-13);
         }
 }
 
@@ -59,10 +62,13 @@ TEST(CellFlux, derivatives_equal_difference_quotients) {
         for (const double a : {-5.0, -0.2, 0.3, 8.0}) {
             const double left = 2, right = 3, h = 1e-6;
             const auto at = [&](double du, double da, double dl, double dr) {
-                return electron_flux(1.3, bernoulli(u + du), a + da, left * std::exp(dl), right * std::exp(dr)).value;
+                return electron_flux(1.3, bernoulli(u + du), a + da, left * std::exp(dl),
+                                     right * std::exp(dr))
+                    .value;
             };
             const CellFlux f = electron_flux(1.3, bernoulli(u), a, left, right);
-            const double scale = 1e-8 * (std::abs(f.value) + std::abs(f.by_a) + 1);  // rounding 1e-16/h and h^2
+            const double scale =
+                1e-8 * (std::abs(f.value) + std::abs(f.by_a) + 1);  // rounding 1e-16/h and h^2
             EXPECT_NEAR(f.by_u, (at(h, 0, 0, 0) - at(-h, 0, 0, 0)) / (2 * h), scale);
             EXPECT_NEAR(f.by_a, (at(0, h, 0, 0) - at(0, -h, 0, 0)) / (2 * h), scale);
             EXPECT_NEAR(f.by_log_left, (at(0, 0, h, 0) - at(0, 0, -h, 0)) / (2 * h), scale);

@@ -26,8 +26,9 @@ Results small_results() {
     results.profiles.depth_um = {0, 0.5, 1};
     results.profiles.layer = {0, 0, 0};
     results.profiles.layer_names = {"only"};
-    results.profiles.variables = {{"net_doping", Unit::density, "net doping", false, {1e22, 2e22, 3e22}},
-                                  {"electric_field", Unit::field, "field", true, {1e2, 2e2, 3e2, 4e2, 5e2, 6e2}}};
+    results.profiles.variables = {
+        {"net_doping", Unit::density, "net doping", false, {1e22, 2e22, 3e22}},
+        {"electric_field", Unit::field, "field", true, {1e2, 2e2, 3e2, 4e2, 5e2, 6e2}}};
     return results;
 }
 
@@ -37,7 +38,8 @@ TEST(ResultFile, opens_in_h5py_xarray_and_ncdump_with_the_values_of_its_summary)
     const TemporaryFolder folder;
     const std::string demo = std::string(SOURCE_ROOT) + "/demo-structures/measured-profile.json";
     ASSERT_EQ(run_in(folder, std::string(PROGRAM) + " iv " + demo + " --biases=-5,0,0.6 -o r.h5").status, 0);
-    const Ran ran = run_in(folder, std::string(PYTHON) + " " + SOURCE_ROOT + "/tests/support/check_result_file.py r.h5 " + demo);
+    const Ran ran = run_in(
+        folder, std::string(PYTHON) + " " + SOURCE_ROOT + "/tests/support/check_result_file.py r.h5 " + demo);
     EXPECT_EQ(ran.status, 0) << ran.err;
     EXPECT_EQ(ran.out.substr(0, 16), "checked 3 points");
 }
@@ -49,9 +51,11 @@ TEST(ResultFile, is_free_of_infinities_at_77_K_and_at_a_thousand_volts) {
       "doping":[{"kind":"uniform","dopant":"acceptor","concentration":"1e18 cm-3","layer":"p"},
                 {"kind":"uniform","dopant":"donor","concentration":"1e14 cm-3","layer":"n"}],
       "mesh":{"tolerance":1e-3}})");
-    const Ran solved = run_in(folder, std::string(PROGRAM) + " iv deep.json --biases=-18,-50,-200,-1000 -o r.h5");
+    const Ran solved =
+        run_in(folder, std::string(PROGRAM) + " iv deep.json --biases=-18,-50,-200,-1000 -o r.h5");
     ASSERT_EQ(solved.status, 0) << solved.err;
-    const Ran ran = run_in(folder, std::string(PYTHON) + " " + SOURCE_ROOT + "/tests/support/check_result_file.py r.h5 deep.json");
+    const Ran ran = run_in(folder, std::string(PYTHON) + " " + SOURCE_ROOT +
+                                       "/tests/support/check_result_file.py r.h5 deep.json");
     EXPECT_EQ(ran.status, 0) << ran.err;
     EXPECT_EQ(ran.out.substr(0, 16), "checked 4 points");
 }

@@ -1,5 +1,5 @@
-// F_1/2, its derivative and inverse against 13-digit values computed with 30-digit arithmetic (-Li_3/2(-exp(eta))), and
-// against the Joyce-Dixon series [JoyceDixon1977] where that holds.
+// F_1/2, its derivative and inverse against 13-digit values computed with 30-digit arithmetic
+// (-Li_3/2(-exp(eta))), and against the Joyce-Dixon series [JoyceDixon1977] where that holds.
 // SPDX-License-Identifier: MIT
 #include "core/models/fermi_integral.hpp"
 
@@ -10,13 +10,14 @@
 using namespace bandwright;
 
 TEST(FermiIntegral, equals_tabulated_values) {
-    const double rows[][3] = {{-10, 4.5398472360805e-5, 4.5399201052641e-5}, {-6, 2.4744163366453e-3, 2.4765827958567e-3},
-                              {-5, 6.7060199892682e-3, 6.7219543145059e-3},  {-2, 0.12366562180121, 0.12929851332008},
-                              {0, 0.60489864342163, 0.76514702462541},       {1, 1.0270571254744, 1.5756407761513},
-                              {2, 1.4642945890876, 2.8237212774016},         {4, 2.1858696906238, 6.5115675927548},
-                              {5, 2.4729876224829, 8.8442088952430},         {8, 3.1691247564959, 17.355020120423},
-                              {12, 3.8972682319254, 31.540203287044},        {20, 5.0410185075353, 67.491512221659},
-                              {30, 6.1775494458221, 123.77734775010}};
+    const double rows[][3] = {
+        {-10, 4.5398472360805e-5, 4.5399201052641e-5}, {-6, 2.4744163366453e-3, 2.4765827958567e-3},
+        {-5, 6.7060199892682e-3, 6.7219543145059e-3},  {-2, 0.12366562180121, 0.12929851332008},
+        {0, 0.60489864342163, 0.76514702462541},       {1, 1.0270571254744, 1.5756407761513},
+        {2, 1.4642945890876, 2.8237212774016},         {4, 2.1858696906238, 6.5115675927548},
+        {5, 2.4729876224829, 8.8442088952430},         {8, 3.1691247564959, 17.355020120423},
+        {12, 3.8972682319254, 31.540203287044},        {20, 5.0410185075353, 67.491512221659},
+        {30, 6.1775494458221, 123.77734775010}};
     // The rows carry 14 digits.
     for (const auto& [eta, minus_half, half] : rows) {
         EXPECT_NEAR(fermi_half(eta) / half, 1, 2e-13) << eta;
@@ -36,16 +37,24 @@ TEST(FermiIntegral, degeneracy_has_its_derivative) {
     for (double eta = -30; eta < 60; eta += 0.731) {
         const double h = 1e-5;
         // Central difference: h^2/6 and 1e-16/h.
-        EXPECT_NEAR(degeneracy(eta).ratio - 1, (degeneracy(eta + h).log_gamma - degeneracy(eta - h).log_gamma) / (2 * h), 1e-9) << eta;
+        EXPECT_NEAR(degeneracy(eta).ratio - 1,
+                    (degeneracy(eta + h).log_gamma - degeneracy(eta - h).log_gamma) / (2 * h), 1e-9)
+            << eta;
     }
     EXPECT_NEAR(degeneracy(-700).log_gamma, 0, 1e-300);
     EXPECT_EQ(degeneracy(-700).ratio, 1);
 }
 
 TEST(FermiIntegral, inverse_returns) {
-    const double rows[][2] = {{1e-6, -13.8155102044109}, {0.1, -2.2672791068878}, {1, 0.348747361103643}, {10, 5.45625191452413}, {100, 26.0153394151231}};
-    for (const auto& [u, eta] : rows) EXPECT_NEAR(inverse_fermi_half(u), eta, 2e-13 * std::max(1.0, std::abs(eta))) << u;
-    for (double u = 1e-12; u < 1e3; u *= 3.7) EXPECT_NEAR(fermi_half(inverse_fermi_half(u)) / u, 1, 5e-14) << u;
+    const double rows[][2] = {{1e-6, -13.8155102044109},
+                              {0.1, -2.2672791068878},
+                              {1, 0.348747361103643},
+                              {10, 5.45625191452413},
+                              {100, 26.0153394151231}};
+    for (const auto& [u, eta] : rows)
+        EXPECT_NEAR(inverse_fermi_half(u), eta, 2e-13 * std::max(1.0, std::abs(eta))) << u;
+    for (double u = 1e-12; u < 1e3; u *= 3.7)
+        EXPECT_NEAR(fermi_half(inverse_fermi_half(u)) / u, 1, 5e-14) << u;
 }
 
 TEST(FermiIntegral, agrees_with_the_joyce_dixon_series_and_its_negative_second_coefficient) {

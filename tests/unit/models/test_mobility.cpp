@@ -1,5 +1,5 @@
-// Mobility models against their own published forms' sample values, and against the resistivity standard F723.
-// SPDX-License-Identifier: MIT
+// Mobility models against their own published forms' sample values, and against the resistivity standard
+// F723. SPDX-License-Identifier: MIT
 #include "core/models/mobility.hpp"
 
 #include <gtest/gtest.h>
@@ -26,11 +26,15 @@ double mu(MobilityModel model, Carrier carrier, double N, double T = 300, bool a
 constexpr auto n = Carrier::electron;
 constexpr auto p = Carrier::hole;
 
-// ASTM F723-99 at 23 C: resistivity of boron and phosphorus doped silicon [ohm cm]; formulas from two public copies.
-double boron_resistivity(double N) { return 1.305e16 / N + 1.133e17 / (N * (1 + std::pow(2.58e-19 * N, -0.737))); }
+// ASTM F723-99 at 23 C: resistivity of boron and phosphorus doped silicon [ohm cm]; formulas from two public
+// copies.
+double boron_resistivity(double N) {
+    return 1.305e16 / N + 1.133e17 / (N * (1 + std::pow(2.58e-19 * N, -0.737)));
+}
 double phosphorus_resistivity(double N) {
     const double x = std::log10(N) - 16;
-    const double Z = (-3.0769 + 2.2108 * x - 0.62272 * x * x + 0.057501 * x * x * x) / (1 - 0.68157 * x + 0.19833 * x * x - 0.018376 * x * x * x);
+    const double Z = (-3.0769 + 2.2108 * x - 0.62272 * x * x + 0.057501 * x * x * x) /
+                     (1 - 0.68157 * x + 0.19833 * x * x - 0.018376 * x * x * x);
     return 6.242e18 / N * std::pow(10, Z);
 }
 
@@ -51,8 +55,10 @@ TEST(Masetti, equals_its_table) {
 }
 
 TEST(Arora, has_an_exponent_where_copies_print_a_factor) {
-    const double rows[][4] = {{300, 1e15, 1322.3, 457.96}, {300, 1e16, 1218.2, 437.45}, {300, 1e17, 777.34, 330.87}, {300, 1e18, 262.11, 143.22},
-                              {250, 1e16, 1761.7, 623.17}, {400, 1e17, 513.45, 214.59}, {500, 1e16, 429.63, 167.32}};
+    const double rows[][4] = {{300, 1e15, 1322.3, 457.96}, {300, 1e16, 1218.2, 437.45},
+                              {300, 1e17, 777.34, 330.87}, {300, 1e18, 262.11, 143.22},
+                              {250, 1e16, 1761.7, 623.17}, {400, 1e17, 513.45, 214.59},
+                              {500, 1e16, 429.63, 167.32}};
     for (const auto& [T, N, electrons, holes] : rows) {
         EXPECT_NEAR(mu(MobilityModel::arora, n, N, T) / electrons, 1, 5e-5);
         EXPECT_NEAR(mu(MobilityModel::arora, p, N, T) / holes, 1, 5e-5);
@@ -62,11 +68,14 @@ TEST(Arora, has_an_exponent_where_copies_print_a_factor) {
 TEST(Resistivity, differs_from_the_standard_by_the_expected_amounts) {
     // Per cent, as the models stand (300 K against 23 C); each pinned to 1 %.
     const double densities[] = {1e14, 1e15, 1e16, 1e17, 3e17, 1e18, 3e18, 1e19, 1e20};
-    const double masetti_B[] = {-1.7, -1.7, -1.7, 3.3, 9.0, 11.9, 9.8, 4.0, -6.6}, masetti_P[] = {-3.6, -2.2, -0.8, -3.1, -2.0, 4.5, 10.0, 6.2, -9.6};
-    const double arora_p[] = {-3.3, -2.4, 1.2, 7.2, 5.8, -0.1, -3.7, -2.3, 5.4}, arora_n[] = {-8.1, -5.0, 2.1, 4.4, 0.4, -1.1, 2.2, 5.6, 12.9};
+    const double masetti_B[] = {-1.7, -1.7, -1.7, 3.3, 9.0, 11.9, 9.8, 4.0, -6.6},
+                 masetti_P[] = {-3.6, -2.2, -0.8, -3.1, -2.0, 4.5, 10.0, 6.2, -9.6};
+    const double arora_p[] = {-3.3, -2.4, 1.2, 7.2, 5.8, -0.1, -3.7, -2.3, 5.4},
+                 arora_n[] = {-8.1, -5.0, 2.1, 4.4, 0.4, -1.1, 2.2, 5.6, 12.9};
     for (int k = 0; k < 9; ++k) {
         const double N = densities[k], q = 1.602176634e-19;
-        const double holes = 1 / (q * N * boron_resistivity(N)), electrons = 1 / (q * N * phosphorus_resistivity(N));
+        const double holes = 1 / (q * N * boron_resistivity(N)),
+                     electrons = 1 / (q * N * phosphorus_resistivity(N));
         EXPECT_NEAR(100 * (mu(MobilityModel::masetti, p, N) / holes - 1), masetti_B[k], 1) << N;
         EXPECT_NEAR(100 * (mu(MobilityModel::masetti, n, N) / electrons - 1), masetti_P[k], 1) << N;
         EXPECT_NEAR(100 * (mu(MobilityModel::arora, p, N) / holes - 1), arora_p[k], 1) << N;
@@ -83,14 +92,19 @@ TEST(SheetResistance, of_diffused_layers_equals_its_definition) {
         double ohm;
     };
     // Gaussian length 2 sqrt(Dt) = sqrt(2) straggle, chosen so that the junction lies at 2, 1 and 3 um.
-    const Row rows[] = {{"B", R"("kind":"gaussian","peak":"1e18 cm-3","depth":"0 um","straggle":"0.53807959 um")", "1e15 cm-3", 481.325},
-                        {"B", R"("kind":"gaussian","peak":"1e19 cm-3","depth":"0 um","straggle":"0.26903980 um")", "1e16 cm-3", 211.375},
-                        {"P", R"("kind":"gaussian","peak":"1e19 cm-3","depth":"0 um","straggle":"0.69898820 um")", "1e15 cm-3", 49.8705}};
+    const Row rows[] = {
+        {"B", R"("kind":"gaussian","peak":"1e18 cm-3","depth":"0 um","straggle":"0.53807959 um")",
+         "1e15 cm-3", 481.325},
+        {"B", R"("kind":"gaussian","peak":"1e19 cm-3","depth":"0 um","straggle":"0.26903980 um")",
+         "1e16 cm-3", 211.375},
+        {"P", R"("kind":"gaussian","peak":"1e19 cm-3","depth":"0 um","straggle":"0.69898820 um")",
+         "1e15 cm-3", 49.8705}};
     for (const Row& row : rows) {
         const std::string other = std::string(row.dopant) == "B" ? "P" : "B";
-        const std::string text = R"({"format":"bandwright-structure 1","layers":[{"name":"a","material":"Si","thickness":"8 um"}],"doping":[{"dopant":")" +
-                                 std::string(row.dopant) + "\"," + row.profile + R"(},{"kind":"uniform","dopant":")" + other +
-                                 R"(","concentration":")" + row.background + R"("}],"models":{"mobility":"masetti"}})";
+        const std::string text =
+            R"({"format":"bandwright-structure 1","layers":[{"name":"a","material":"Si","thickness":"8 um"}],"doping":[{"dopant":")" +
+            std::string(row.dopant) + "\"," + row.profile + R"(},{"kind":"uniform","dopant":")" + other +
+            R"(","concentration":")" + row.background + R"("}],"models":{"mobility":"masetti"}})";
         const auto lines = sheet_resistances(read_structure_text(text, "a.json", ".").structure);
         ASSERT_EQ(lines.size(), 2u);
         EXPECT_NEAR(lines[0].value / row.ohm, 1, 1e-3) << row.profile;
@@ -105,5 +119,6 @@ TEST(Silicon, has_its_intrinsic_density) {
     EXPECT_NEAR(ni(300) / 9.65e9, 1, 1e-9);
     EXPECT_NEAR(ni(250) / 6.878811e7, 1, 1e-6);
     EXPECT_NEAR(ni(400) / 5.418305e12, 1, 1e-6);
-    for (const double T : {250.0, 300.0, 350.0, 400.0, 450.0}) EXPECT_NEAR(ni(T) / (5.29e19 * std::pow(T / 300, 2.54) * std::exp(-6726 / T)), 1, 0.013);
+    for (const double T : {250.0, 300.0, 350.0, 400.0, 450.0})
+        EXPECT_NEAR(ni(T) / (5.29e19 * std::pow(T / 300, 2.54) * std::exp(-6726 / T)), 1, 0.013);
 }
