@@ -168,6 +168,23 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
     }
     figures.peak_field = field_in_cell(v.system, material_cell, peak);
     figures.peak_depth = depth;
+    // At a smooth junction's node the charge passes through zero a little beside it; how far, the charges on
+    // both sides tell. (At a jump of the doping they are large and the peak is the node's.)
+    if (best > 0 && best < v.system.cells()) {
+        const auto offset = [&](double here, double far, double h) {
+            return std::abs(here) < 0.1 * std::abs(far) ? h * std::abs(here / (far - here)) : 0.0;
+        };
+        const double beside =
+            std::max(offset(charge_right(v.system, v.equations, best - 1),
+                            charge_left(v.system, v.equations, best - 1), v.system.mesh.width(best - 1)),
+                     offset(charge_left(v.system, v.equations, best),
+                            charge_right(v.system, v.equations, best), v.system.mesh.width(best)));
+        const double moved = std::abs(depth - v.x(best));
+        const double near = 0.1 * std::min(v.system.mesh.width(best - 1), v.system.mesh.width(best));
+        // Both ends of the doping's cells are shifted alike to keep the dose; the zero follows to the same
+        // order.
+        figures.peak_depth_uncertainty = std::max(beside, moved < near ? moved : 0.0);
+    }
 }
 
 // Net doping summed from a node to another [m^-2], dose of whole cells.
