@@ -42,7 +42,7 @@ struct Tally {
 
 TEST(ErrorBars, cover_true_errors_and_are_not_much_larger) {
     const char* wanted = std::getenv("BANDWRIGHT_ERROR_BAR_SEEDS");
-    const unsigned seeds = wanted ? static_cast<unsigned>(std::atoi(wanted)) : 100;
+    const unsigned seeds = wanted ? static_cast<unsigned>(std::atoi(wanted)) : 30;
     std::map<std::string, Tally> tallies;
     int unsolved = 0;
     for (unsigned seed = 1; seed <= seeds; ++seed) {
