@@ -50,8 +50,9 @@ PointFigures point_figures(const DiscreteSystem& system, const State& state, con
 
 /// Estimated absolute errors of the finest of two or three nested meshes (finest first), [no_value where the
 /// figure has no value]. With a second-order scheme the error of the finest is a third of its difference from
-/// the next; the third mesh guards against two that agree by chance. A safety factor of 2 stands on the
-/// estimate, so that a printed error covers; tests judge coverage and median over 100 structures.
+/// the next; the third mesh guards against two that agree by chance. Two figures that hang on a searched
+/// place count as first order. A safety factor of 2 stands on the estimate, so that a printed error covers;
+/// tests judge coverage and median over 100 structures.
 std::array<double, point_figure_count> nested_errors(const std::vector<PointFigures>& finest_first);
 
 /// Estimated errors relative to the values (depths relative to the depletion width) of a fine mesh beside its
