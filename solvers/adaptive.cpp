@@ -15,7 +15,8 @@ namespace bandwright {
 
 namespace {
 
-constexpr int passes = 4;              // demand passes; the demand settles in three
+constexpr int passes = 3;  // at the first aim; the demand settles in three
+constexpr double first_aim = 1e-3;
 constexpr int rounds = 4;              // of scaling all widths after that
 constexpr double growth = 0.2;         // of the width per unit of depth; 20 % from cell to cell
 constexpr double least_width = 2e-11;  // [m]
@@ -115,12 +116,16 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
             if (sample.state) sample.state->unknowns = interpolated(from, sample.state->unknowns, to, 3);
     };
 
-    for (int pass = 0; pass < passes; ++pass) {
+    // A width changes by no more than six times in a pass, a tolerance therefore by no more than thirty.
+    const int further =
+        std::max(1, static_cast<int>(std::ceil(std::log(first_aim / tolerance) / std::log(30.0) - 1e-9)));
+    for (int pass = 0; pass < passes + further; ++pass) {
         const DiscreteSystem system = discretize(structure, result.mesh);
         std::vector<Demand> demands;
         SeenDensities seen;
         // The first passes aim lower: their demands are uncertain and need not be met exactly.
-        const double aim = pass + 1 < passes ? std::max(tolerance, 1e-3) : tolerance;
+        const double aim = pass < passes ? std::max(tolerance, first_aim)
+                                         : std::max(tolerance, first_aim * std::pow(30.0, passes - 1 - pass));
         solve_samples(
             system,
             [&](const Sample&, BiasWalk& walk) {

@@ -164,8 +164,7 @@ std::vector<double> largest_widths(const DiscreteSystem& system, const SeenDensi
         // ln N changes by |slope| h across the cell; keep (slope h)^2 / 24 well below the tolerance's square
         // root.
         const double slope = 2 * std::abs(std::log(r / l)) / h;
-        if (slope > 0)
-            widths[cell] = std::min(widths[cell], std::sqrt(24 * std::sqrt(tolerance) * 0.3) / slope);
+        if (slope > 0) widths[cell] = std::min(widths[cell], std::sqrt(720 * tolerance) / slope);
     }
     return widths;
 }

@@ -87,8 +87,9 @@ std::array<double, point_figure_count> nested_errors(const std::vector<PointFigu
         // Figures that hang on a place found by a search lose an order where the place moves from node to
         // node.
         const auto figure = static_cast<PointFigure>(k);
-        const bool first_order =
-            figure == PointFigure::built_in_potential || figure == PointFigure::peak_field_depth;
+        const bool first_order = figure == PointFigure::built_in_potential ||
+                                 figure == PointFigure::peak_field_depth ||
+                                 figure == PointFigure::extrapolated_field;
         double estimate = std::abs(fine - next) / (first_order ? 1 : 3);
         if (finest_first.size() > 2 && !std::isnan(finest_first[2].values[k])) {
             const double coarser = std::abs(next - finest_first[2].values[k]) / 12;

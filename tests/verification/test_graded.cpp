@@ -21,7 +21,8 @@ TEST(ExponentialProfile, has_the_field_kT_over_q_L) {
     for (const Row& row : {Row{1, 1, "1e18 cm-3", 258.519998}, Row{0.3, 0.1, "1e18 cm-3", 2585.19998},
                            Row{1, 0.217147241, "1e18 cm-3", 1190.528587}}) {
         Options options;
-        options.tolerance = 1e-6;
+        options.tolerance =
+            1e-8;  // without a junction no figure watches the field; the mesh must be fine by itself
         const std::string doping = std::string(R"({"kind": "exponential", "dopant": "donor", "surface": ")") +
                                    row.surface + R"(", "decay_length": ")" + std::to_string(row.decay) +
                                    R"( um"})";
