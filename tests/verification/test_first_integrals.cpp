@@ -4,7 +4,9 @@
 // d(eps E^2/2)/d(psi) = -rho integrates in closed form; the numbers below are 15-digit values of it,
 // recomputed by tests/reference/poisson_boltzmann_plane.py. Set A (set_a.hpp). Tolerances: the printed error
 // bar, which the tests of error bars hold to account, or the bound stated at the test. Source: elementary
-// first integral (for example [SzeNg2007] ch. 2). SPDX-License-Identifier: MIT
+// first integral (for example [SzeNg2007] ch. 2).
+
+// SPDX-License-Identifier: MIT
 #include <gtest/gtest.h>
 
 #include <cmath>
@@ -78,6 +80,24 @@ TEST(PlaneField, of_1e19_on_1e15_reaches_a_millionth_at_tolerance_1e_7) {
     Options options;
     options.tolerance = 1e-7;
     EXPECT_NEAR(plane_field(solved(-1e19, 1e15, options), -1e19) / 171960.562280618, 1, 1e-6);
+}
+
+TEST(PlaneField, comes_with_the_potential_and_the_carriers_of_the_first_integral) {
+    // Upper layer p: potential of the plane above the neutral p side [V] and hole density there [cm^-3]. 2e-4
+    // kT/q, the size of the error aimed at in kT/q; a density changes by e for kT/q.
+    struct Row {
+        double upper, lower, potential, holes;
+    };
+    for (const Row& row : {Row{-1e19, 1e15, 0.0259301585716647, 3.66768904675e18},
+                           Row{-1e18, 1e16, 0.0335912672228687, 2.7270402465e17},
+                           Row{-1e17, 1e16, 0.0915010526725647, 2.9030196089e15}}) {
+        const BiasOutcome outcome = solved(row.upper, row.lower, {});
+        const double plane = thickness_um(row.upper) * um;
+        const Curve potential = curve(outcome, "electrostatic_potential");
+        EXPECT_NEAR(potential.at(plane) - potential.value.front(), row.potential, 2e-4 * thermal_voltage)
+            << row.upper;
+        EXPECT_NEAR(curve(outcome, "hole_density").at(plane) / per_cm3 / row.holes, 1, 2e-4) << row.upper;
+    }
 }
 
 TEST(PlaneField, under_bias_follows_the_first_integral_with_a_shifted_intrinsic_density) {

@@ -3,7 +3,9 @@
 //
 // J = q integral U dpsi/|E(psi)|, E from the first integral with nie = ni exp(V/2Vt), 40 digits
 // (tests/reference/wide_gap_generation.py). The layer integral leaves out diffusion and what the current
-// bends: 1 %. SPDX-License-Identifier: MIT
+// bends: 1 %.
+
+// SPDX-License-Identifier: MIT
 #include <gtest/gtest.h>
 
 #include <cmath>

@@ -149,7 +149,7 @@ TEST(ProfileDepletion, passes_from_a_doped_into_a_less_doped_layer) {
 }
 
 // Diffused p profiles into a uniform n layer, junction at a depth that fixes their length; values by adaptive
-// quadrature (mpmath, 30 digits), 9 digits kept.
+// quadrature (tests/reference/diffused_depletion.py), 9 digits kept.
 struct DiffusedRow {
     const char* shape;
     double surface, background, depth, potential, p_extent, n_extent, field;
