@@ -60,8 +60,7 @@ PointFigures point_figures(const DiscreteSystem& system, const State& state, con
         // A summit's place follows a relative change of the field by that share of the depletion width.
         const double width =
             junction.top_edge && junction.bottom_edge ? *junction.bottom_edge - *junction.top_edge : depth;
-        set(PointFigure::peak_field_depth, junction.peak_depth,
-            depth * 1e-15 + width * (relative + 1e-12) + 4 * junction.peak_depth_uncertainty);
+        set(PointFigure::peak_field_depth, junction.peak_depth, depth * 1e-15 + width * (relative + 1e-12));
         set(PointFigure::extrapolated_field, magnitude(junction.extrapolated_field),
             field * (relative + 1e-12));
         set(PointFigure::depletion_top_edge, junction.top_edge, depth * 1e-15);

@@ -143,12 +143,27 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
     }
     double peak = v.displacement[best], depth = v.x(best);
     std::size_t material_cell = best < v.system.cells() ? best : best - 1;
+    // Charge at an end of a cell; at a node where it is smooth both cells share the mean, so that the summit
+    // lies in exactly one of them and moves smoothly with the mesh.
+    const auto charge_at = [&](std::size_t cell, bool at_right) {
+        const std::size_t node = at_right ? cell + 1 : cell;
+        const double own =
+            at_right ? charge_right(v.system, v.equations, cell) : charge_left(v.system, v.equations, cell);
+        if (node == 0 || node == v.system.cells()) return own;
+        const double before = charge_right(v.system, v.equations, node - 1),
+                     after = charge_left(v.system, v.equations, node);
+        const double far = std::max(std::abs(charge_left(v.system, v.equations, node - 1)),
+                                    std::abs(charge_right(v.system, v.equations, node)));
+        if (std::abs(before - after) > 0.05 * far) return own;  // a jump of the doping
+        const double a = v.system.mesh.width(node - 1), b = v.system.mesh.width(node);
+        return (a * before + b * after) / (a + b);
+    };
     // A smooth summit between two nodes: the cubic through both fields with the charge as slope.
     for (const std::size_t cell : {best > 0 ? best - 1 : best, best}) {
         if (cell >= v.system.cells()) continue;
         const double sign = positive ? 1 : -1;
-        const double left_slope = sign * charge_left(v.system, v.equations, cell);
-        const double right_slope = sign * charge_right(v.system, v.equations, cell);
+        const double left_slope = sign * charge_at(cell, false);
+        const double right_slope = sign * charge_at(cell, true);
         if (!(left_slope > 0 && right_slope < 0)) continue;
         const double h = v.system.mesh.width(cell), l = sign * v.displacement[cell],
                      r = sign * v.displacement[cell + 1];
@@ -160,7 +175,7 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
             (slope > 0 ? from : to) = t;
         }
         const double summit = hermite(0.5 * (from + to), h, l, left_slope, r, right_slope);
-        if (summit > std::abs(peak)) {
+        if (summit >= std::abs(peak) * (1 - 1e-12)) {  // the rise itself may be below rounding
             peak = sign * summit;
             depth = v.x(cell) + 0.5 * (from + to) * h;
             material_cell = cell;
@@ -168,23 +183,6 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
     }
     figures.peak_field = field_in_cell(v.system, material_cell, peak);
     figures.peak_depth = depth;
-    // At a smooth junction's node the charge passes through zero a little beside it; how far, the charges on
-    // both sides tell. (At a jump of the doping they are large and the peak is the node's.)
-    if (best > 0 && best < v.system.cells()) {
-        const auto offset = [&](double here, double far, double h) {
-            return std::abs(here) < 0.1 * std::abs(far) ? h * std::abs(here / (far - here)) : 0.0;
-        };
-        const double beside =
-            std::max(offset(charge_right(v.system, v.equations, best - 1),
-                            charge_left(v.system, v.equations, best - 1), v.system.mesh.width(best - 1)),
-                     offset(charge_left(v.system, v.equations, best),
-                            charge_right(v.system, v.equations, best), v.system.mesh.width(best)));
-        const double moved = std::abs(depth - v.x(best));
-        const double near = 0.1 * std::min(v.system.mesh.width(best - 1), v.system.mesh.width(best));
-        // Both ends of the doping's cells are shifted alike to keep the dose; the zero follows to the same
-        // order.
-        figures.peak_depth_uncertainty = std::max(beside, moved < near ? moved : 0.0);
-    }
 }
 
 // Net doping summed from a node to another [m^-2], dose of whole cells.

@@ -21,8 +21,6 @@ struct JunctionFigures {
     /// Largest field of the junction, signed [V/m], at a node or, where the field is smooth, at the summit
     /// between two.
     std::optional<double> peak_field, peak_depth;
-    /// How far beside its node the peak may lie [m]; 0 for a peak between nodes or at a jump.
-    double peak_depth_uncertainty = 0;
     /// The lightly doped side's field where it holds fewest carriers, carried to the junction by its doping
     /// alone, signed [V/m]: the figure that a hand estimate means.
     std::optional<double> extrapolated_field;
