@@ -92,7 +92,7 @@ TEST(Program, interrupted_saves_what_was_solved) {
     const TemporaryFolder folder;
     folder.write("diode.json", diode);
     const Ran ran = run_in(
-        folder, "timeout -s INT 1 " + program +
+        folder, "timeout -s INT 4 " + program +
                     " iv diode.json --from 0 --to -40 --points 100000; exit $(( $? == 124 ? 130 : $? ))");
     EXPECT_EQ(ran.status, 130);
     EXPECT_NE(ran.err.find("points are saved in diode.iv.h5"), std::string::npos) << ran.err;
