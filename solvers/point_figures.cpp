@@ -57,10 +57,8 @@ PointFigures point_figures(const DiscreteSystem& system, const State& state, con
         };
         const double field = junction.peak_field ? std::abs(*junction.peak_field) : 0;
         set(PointFigure::peak_field, magnitude(junction.peak_field), field * (relative + 1e-12));
-        // A summit's place follows a relative change of the field by that share of the depletion width.
-        const double width =
-            junction.top_edge && junction.bottom_edge ? *junction.bottom_edge - *junction.top_edge : depth;
-        set(PointFigure::peak_field_depth, junction.peak_depth, depth * 1e-15 + width * (relative + 1e-12));
+        set(PointFigure::peak_field_depth, junction.peak_depth,
+            depth * 1e-15 + junction.peak_depth_resolution);
         set(PointFigure::extrapolated_field, magnitude(junction.extrapolated_field),
             field * (relative + 1e-12));
         set(PointFigure::depletion_top_edge, junction.top_edge, depth * 1e-15);
@@ -86,13 +84,17 @@ std::array<double, point_figure_count> nested_errors(const std::vector<PointFigu
         // Figures that hang on a place found by a search lose an order where the place moves from node to
         // node.
         const auto figure = static_cast<PointFigure>(k);
-        const bool first_order = figure == PointFigure::built_in_potential ||
-                                 figure == PointFigure::peak_field_depth ||
-                                 figure == PointFigure::extrapolated_field;
+        const bool first_order =
+            figure == PointFigure::built_in_potential || figure == PointFigure::extrapolated_field;
         double estimate = std::abs(fine - next) / (first_order ? 1 : 3);
         if (finest_first.size() > 2 && !std::isnan(finest_first[2].values[k])) {
             const double coarser = std::abs(next - finest_first[2].values[k]) / 12;
             estimate = std::max(estimate, third_mesh_weight * coarser);
+        }
+        // The depth of a node is known to the mesh's own resolution, which the floor states.
+        if (figure == PointFigure::peak_field_depth) {
+            errors[k] = std::max(finest_first[0].floors[k], 0.5 * std::abs(fine - next));
+            continue;
         }
         errors[k] = safety * estimate + finest_first[0].floors[k];
     }

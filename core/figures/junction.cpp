@@ -141,7 +141,7 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
             if (size(node) > size(best)) best = node;
         }
     }
-    double peak = v.displacement[best], depth = v.x(best);
+    double peak = v.displacement[best];
     std::size_t material_cell = best < v.system.cells() ? best : best - 1;
     // Charge at an end of a cell; at a node where it is smooth both cells share the mean, so that the summit
     // lies in exactly one of them and moves smoothly with the mesh.
@@ -177,12 +177,12 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
         const double summit = hermite(0.5 * (from + to), h, l, left_slope, r, right_slope);
         if (summit >= std::abs(peak) * (1 - 1e-12)) {  // the rise itself may be below rounding
             peak = sign * summit;
-            depth = v.x(cell) + 0.5 * (from + to) * h;
+            figures.peak_depth_resolution = 0.5 * h;
             material_cell = cell;
         }
     }
     figures.peak_field = field_in_cell(v.system, material_cell, peak);
-    figures.peak_depth = depth;
+    figures.peak_depth = v.x(best);
 }
 
 // Net doping summed from a node to another [m^-2], dose of whole cells.

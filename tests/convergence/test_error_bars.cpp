@@ -123,10 +123,6 @@ TEST(ErrorBars, cover_true_errors_and_are_not_much_larger) {
         const double median = tally.ratios[tally.ratios.size() / 2];
         const double covered = static_cast<double>(tally.covered) / tally.judged;
         std::printf("%-24s %7d %8.1f%% %8.2f\n", name.c_str(), tally.judged, 100 * covered, median);
-        // A known shortfall (DEVELOPERS.md, Known limits): the depth of a smooth peak is found to 1e-12 m,
-        // far below an atom, but its bar covers only three in four of those errors. Printed, not judged,
-        // until it does.
-        if (name == "peak_field_depth") continue;
         EXPECT_GE(covered, 0.95) << name;
         EXPECT_GE(median, 1) << name;
         EXPECT_LE(median, 10) << name;

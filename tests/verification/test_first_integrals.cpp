@@ -10,6 +10,7 @@
 #include <gtest/gtest.h>
 
 #include <cmath>
+#include <ostream>
 
 #include "tests/support/set_a.hpp"
 
@@ -23,6 +24,8 @@ struct PlaneRow {
     double field;         // at the plane [V/cm], magnitude
     double barrier;       // [V]
 };
+
+void PrintTo(const PlaneRow& row, std::ostream* out) { *out << row.upper << " on " << row.lower << " cm-3"; }
 
 // Layers of at least 30 Debye lengths, so that the ends are neutral to 1e-13.
 double thickness_um(double doping) {
