@@ -1,5 +1,7 @@
 // The command line: common options, parsing, suggestions for what is misspelt. CLI11 is included in the .cpp
-// files alone. Not for: what a command does (commands/). SPDX-License-Identifier: MIT
+// files alone. Not for: what a command does (commands/).
+//
+// SPDX-License-Identifier: MIT
 #pragma once
 
 #include <optional>

@@ -1,5 +1,7 @@
 // Running an analysis for a command: reading, signals, checkpoints, writing, exit status. Shared by bands and
-// iv. Not for: the options of one command (commands/). SPDX-License-Identifier: MIT
+// iv. Not for: the options of one command (commands/).
+//
+// SPDX-License-Identifier: MIT
 #pragma once
 
 #include "apps/command.hpp"

@@ -1,5 +1,7 @@
 // Where a solution asks for smaller cells: local shares of the relative error of charge, flux and
-// recombination. Not for: turning them into a mesh (core/mesh/refine.hpp). SPDX-License-Identifier: MIT
+// recombination. Not for: turning them into a mesh (core/mesh/refine.hpp).
+//
+// SPDX-License-Identifier: MIT
 #pragma once
 
 #include <vector>

@@ -1,5 +1,7 @@
 // The linear system of a chain of boxes: three unknowns a node, three fluxes a cell; factorisation and
-// solution. Not for: what the fluxes mean (assemble.hpp). SPDX-License-Identifier: MIT
+// solution. Not for: what the fluxes mean (assemble.hpp).
+//
+// SPDX-License-Identifier: MIT
 #pragma once
 
 #include <array>

@@ -1,5 +1,7 @@
 // The Scharfetter-Gummel flux of one carrier through one cell, in the form that does not cancel, with its
-// derivatives. Not for: the loop over cells (assemble.cpp). SPDX-License-Identifier: MIT
+// derivatives. Not for: the loop over cells (assemble.cpp).
+//
+// SPDX-License-Identifier: MIT
 #pragma once
 
 #include "core/discretization/bernoulli.hpp"

@@ -1,5 +1,7 @@
 // Net recombination of one half cell with its derivatives, free of cancellation. Not for: generation by
-// light. SPDX-License-Identifier: MIT
+// light.
+//
+// SPDX-License-Identifier: MIT
 #pragma once
 
 #include <cmath>

@@ -1,5 +1,7 @@
 // Everything over depth for the result file: band edges, potential, field, densities, currents,
-// recombination. Not for: single figures (junction.hpp, terminal.hpp). SPDX-License-Identifier: MIT
+// recombination. Not for: single figures (junction.hpp, terminal.hpp).
+//
+// SPDX-License-Identifier: MIT
 #pragma once
 
 #include "core/base/results.hpp"

@@ -1,5 +1,7 @@
 // The first mesh of a structure, from its doping alone: Debye lengths at jumps and junctions, doping
-// gradients elsewhere. Not for: refinement from a solution (refine.hpp). SPDX-License-Identifier: MIT
+// gradients elsewhere. Not for: refinement from a solution (refine.hpp).
+//
+// SPDX-License-Identifier: MIT
 #pragma once
 
 #include "core/device/structure.hpp"

@@ -1,6 +1,8 @@
 // The materials that are built in.
 // Not for: materials of a structure file (read_materials.hpp) or what their numbers mean
-// (core/device/material.hpp). SPDX-License-Identifier: MIT
+// (core/device/material.hpp).
+//
+// SPDX-License-Identifier: MIT
 #pragma once
 
 #include <optional>

@@ -1,6 +1,8 @@
 // One entry of the doping list.
 // Not for: which dopants a host knows (core/device/structure.hpp) or values at a depth
-// (core/device/doping.hpp). SPDX-License-Identifier: MIT
+// (core/device/doping.hpp).
+//
+// SPDX-License-Identifier: MIT
 #pragma once
 
 #include <filesystem>

@@ -1,5 +1,7 @@
 // An HDF5 file being written or read: RAII over the C API, errors as FileError. hdf5.h is included in the
-// .cpp alone. Not for: which variables a result file has (write_results.cpp). SPDX-License-Identifier: MIT
+// .cpp alone. Not for: which variables a result file has (write_results.cpp).
+//
+// SPDX-License-Identifier: MIT
 #pragma once
 
 #include <cstdint>

@@ -1,5 +1,7 @@
 // The tree keeps its own rules: arrows between rooms, sources behind numbers, one version. Sizes are printed,
-// not judged. SPDX-License-Identifier: MIT
+// not judged.
+//
+// SPDX-License-Identifier: MIT
 #include <gtest/gtest.h>
 
 #include <cstdio>

@@ -1,5 +1,7 @@
 // The structures drawn by chance: the same on every machine, readable, within their ranges, most with a
-// junction. SPDX-License-Identifier: MIT
+// junction.
+//
+// SPDX-License-Identifier: MIT
 #include "tests/support/random_structure.hpp"
 
 #include <gtest/gtest.h>

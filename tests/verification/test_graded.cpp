@@ -1,5 +1,7 @@
 // Graded profiles with closed or computed answers: the exponential profile's constant field, the linear
-// junction. SPDX-License-Identifier: MIT
+// junction.
+//
+// SPDX-License-Identifier: MIT
 #include <gtest/gtest.h>
 
 #include <cmath>

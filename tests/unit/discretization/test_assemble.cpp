@@ -1,5 +1,7 @@
 // The Jacobian against differences for every model, in random admissible states; a wrong derivative is
-// noticed. SPDX-License-Identifier: MIT
+// noticed.
+//
+// SPDX-License-Identifier: MIT
 #include "core/discretization/assemble.hpp"
 
 #include <gtest/gtest.h>

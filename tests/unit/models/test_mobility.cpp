@@ -1,5 +1,7 @@
 // Mobility models against their own published forms' sample values, and against the resistivity standard
-// F723. SPDX-License-Identifier: MIT
+// F723.
+//
+// SPDX-License-Identifier: MIT
 #include "core/models/mobility.hpp"
 
 #include <gtest/gtest.h>
