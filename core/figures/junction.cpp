@@ -177,7 +177,7 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
         const double summit = hermite(0.5 * (from + to), h, l, left_slope, r, right_slope);
         if (summit >= std::abs(peak) * (1 - 1e-12)) {  // the rise itself may be below rounding
             peak = sign * summit;
-            figures.peak_depth_resolution = 0.5 * h;
+            figures.peak_depth_resolution = h;  // either end of a flat summit's cell may win
             material_cell = cell;
         }
     }

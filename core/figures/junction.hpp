@@ -21,7 +21,7 @@ struct JunctionFigures {
     /// Largest field of the junction, signed [V/m], at a node or, where the field is smooth, at the summit
     /// between two; the depth [m] of the node nearest to it.
     std::optional<double> peak_field, peak_depth;
-    /// How far from that node the summit may lie [m]: half a cell where the field is smooth, 0 at a jump of
+    /// How far from that node the summit may lie [m]: one cell where the field is smooth, 0 at a jump of
     /// the doping.
     double peak_depth_resolution = 0;
     /// The lightly doped side's field where it holds fewest carriers, carried to the junction by its doping
