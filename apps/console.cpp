@@ -85,8 +85,10 @@ std::string TextTable::text() const {
     std::string out;
     const auto add = [&](const std::vector<std::string>& row) {
         std::string line = " ";
-        for (std::size_t k = 0; k < row.size(); ++k)
-            line += " " + padded(row[k], widths[k], k < left.size() && left[k]) + " ";
+        for (std::size_t k = 0; k < row.size(); ++k) {
+            line += \' \'; line += padded(row[k], widths[k], k < left.size() && left[k]);
+            line += \' \';
+        }
         out += line.substr(0, line.find_last_not_of(' ') + 1) + "\n";
     };
     add(headings);
