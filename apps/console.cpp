@@ -86,8 +86,9 @@ std::string TextTable::text() const {
     const auto add = [&](const std::vector<std::string>& row) {
         std::string line = " ";
         for (std::size_t k = 0; k < row.size(); ++k) {
-            line += \' \'; line += padded(row[k], widths[k], k < left.size() && left[k]);
-            line += \' \';
+            line += ' ';
+            line += padded(row[k], widths[k], k < left.size() && left[k]);
+            line += ' ';
         }
         out += line.substr(0, line.find_last_not_of(' ') + 1) + "\n";
     };
