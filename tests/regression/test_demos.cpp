@@ -140,3 +140,31 @@ TEST(Invariants, charge_of_the_stack_equals_the_jump_of_the_displacement) {
     EXPECT_LT(std::abs(charge), 1e-4 * size);
     EXPECT_LT(std::abs(field.value.front()) + std::abs(field.value.back()), 1.0);
 }
+
+TEST(Invariants, scaling_densities_and_lengths_leaves_potentials) {
+    // (N, ni, Nc, Nv) times s with lengths over sqrt(s): the same equations in scaled form, so the same
+    // potentials; without recombination the currents scale as s sqrt(s). s = 4 keeps every number's decimal
+    // text exact.
+    set_a::Options options, scaled;
+    scaled.material =
+        R"("relative_permittivity": 11.7, "electron_affinity": "4.05 eV", "bandgap": "1.0714757279819708 eV",
+        "conduction_band_effective_density": "4e19 cm-3", "valence_band_effective_density": "4e19 cm-3",
+        "electron_mobility": "1000 cm2 V-1 s-1", "hole_mobility": "450 cm2 V-1 s-1")";
+    const BiasOutcome one = set_a::solve(set_a::uniform_stack({{1, -1e17}, {4, 1e16}}, options), {-3, 0.4});
+    const BiasOutcome other =
+        set_a::solve(set_a::uniform_stack({{0.5, -4e17}, {2, 4e16}}, scaled), {-3, 0.4});
+    EXPECT_NEAR(set_a::figure(one, "contact_potential"), set_a::figure(other, "contact_potential"), 1e-13);
+    for (std::size_t k = 0; k < 2; ++k) {
+        const auto ratio = [&](const char* column) {
+            return set_a::point(other, column, k) / set_a::point(one, column, k);
+        };
+        const auto bar = [&](const char* column) {
+            return set_a::point_error(one, column, k) / std::abs(set_a::point(one, column, k)) +
+                   set_a::point_error(other, column, k) / std::abs(set_a::point(other, column, k));
+        };
+        EXPECT_NEAR(ratio("peak_field") / 2, 1, bar("peak_field"));
+        EXPECT_NEAR(ratio("depletion_width") * 2, 1, bar("depletion_width"));
+        EXPECT_NEAR(ratio("current_density") / 8, 1, bar("current_density"));
+        EXPECT_LT(bar("current_density"), 5e-4);
+    }
+}

@@ -65,3 +65,29 @@ TEST(FermiIntegral, agrees_with_the_joyce_dixon_series_and_its_negative_second_c
         EXPECT_NEAR(inverse_fermi_half(u), series, 6e-7);
     }
 }
+
+TEST(FermiIntegral, inverse_equals_computed_energies_over_five_decades) {
+    // u = n/Nc and its reduced energy, 13 digits from 30-digit arithmetic.
+    const double rows[][2] = {{0.001, -6.907401730541}, {0.01, -4.601635146943}, {0.5, -0.5175897329389},
+                              {2, 1.381573058774},      {4, 2.729770039781},     {5, 3.269536028075},
+                              {8, 4.651947368860},      {20, 8.813661405447}};
+    for (const auto& [u, eta] : rows) EXPECT_NEAR(inverse_fermi_half(u), eta, 3e-12) << u;
+}
+
+TEST(FermiIntegral, moves_the_level_of_degenerate_silicon_by_the_computed_energies) {
+    // Nc 2.86e19, Nv 3.10e19 cm^-3, 300 K: reduced energy, shift against Boltzmann [meV] and F_1/2 / F_-1/2.
+    const double kT = 25.851999786435535;  // meV
+    struct Row {
+        double N, band, eta, shift, g;
+    };
+    for (const Row& row : {Row{1e20, 2.86e19, 2.43317936815, 30.5420, 2.13180300},
+                           Row{1e20, 3.10e19, 2.26470401667, 28.2697, 2.05067161},
+                           Row{1e19, 2.86e19, -0.92780045586, 3.18034, 1.12242848},
+                           Row{1e19, 3.10e19, -1.01786279512, 2.93522, 1.11303404},
+                           Row{1e18, 2.86e19, -3.34105075658, 0.319426, 1.01234992}}) {
+        const double eta = inverse_fermi_half(row.N / row.band);
+        EXPECT_NEAR(eta, row.eta, 2e-11);
+        EXPECT_NEAR(kT * (eta - std::log(row.N / row.band)), row.shift, 6e-6 * std::max(1.0, row.shift));
+        EXPECT_NEAR(1 / degeneracy(eta).ratio, row.g, 1e-8);
+    }
+}
