@@ -75,14 +75,14 @@ Demand flux_demand(const DiscreteSystem& system, const State& state, const Equat
 }  // namespace
 
 void SeenDensities::add(const Equations& equations) {
-    const std::size_t cells = equations.left.size();
+    const std::size_t cells = equations.cells();
     if (most.size() != cells) {
         most.assign(cells, 0.0);
         least.assign(cells, INFINITY);
     }
     for (std::size_t cell = 0; cell < cells; ++cell) {
-        const double density = 0.5 * (equations.left[cell].n + equations.left[cell].p +
-                                      equations.right[cell].n + equations.right[cell].p);
+        const double density = 0.5 * (equations.left(cell).n + equations.left(cell).p +
+                                      equations.right(cell).n + equations.right(cell).p);
         most[cell] = std::max(most[cell], density);
         least[cell] = std::min(least[cell], density);
     }
@@ -99,8 +99,8 @@ std::vector<Demand> demands_of(const DiscreteSystem& system, const State& state,
     for (std::size_t cell = 0; cell < cells; ++cell) {
         left[cell] = charge_left(system, equations, cell);
         right[cell] = charge_right(system, equations, cell);
-        noise[cell] = 1e-11 * (equations.left[cell].n + equations.left[cell].p + equations.right[cell].n +
-                               equations.right[cell].p);
+        noise[cell] = 1e-11 * (equations.left(cell).n + equations.left(cell).p + equations.right(cell).n +
+                               equations.right(cell).p);
     }
     Demand charge = second_derivative(system.mesh, left, right, noise);
     for (double& value : charge) value /= 12 * std::max(largest, 1e-300);
@@ -109,8 +109,8 @@ std::vector<Demand> demands_of(const DiscreteSystem& system, const State& state,
     const TerminalCurrent current = terminal_current(system, state, equations);
     double total = std::abs(current.flux), recombined = 0;
     for (std::size_t cell = 0; cell < cells; ++cell) {
-        left[cell] = equations.rate_left[cell].value;
-        right[cell] = equations.rate_right[cell].value;
+        left[cell] = equations.rate_left(cell).value;
+        right[cell] = equations.rate_right(cell).value;
         noise[cell] = 1e-10 * (std::abs(left[cell]) + std::abs(right[cell]));
         recombined += 0.5 * system.mesh.width(cell) * std::abs(left[cell] + right[cell]);
     }
@@ -126,8 +126,8 @@ std::vector<Demand> demands_of(const DiscreteSystem& system, const State& state,
         most_hole = std::max(most_hole, std::abs(profile.hole[cell]));
     }
     const double scale = std::max({total, recombined, 1e-300});
-    const double at_a = std::abs(equations.flux[current.electron_cell].electron),
-                 at_b = std::abs(equations.flux[current.hole_cell].hole);
+    const double at_a = std::abs(equations.flux(current.electron_cell).electron),
+                 at_b = std::abs(equations.flux(current.hole_cell).hole);
     demands.push_back(flux_demand(system, state, equations, true,
                                   state.contact_voltage == 0 ? 1 : std::min(1.0, at_a / scale)));
     demands.push_back(flux_demand(system, state, equations, false,

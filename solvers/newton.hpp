@@ -14,7 +14,7 @@ namespace bandwright {
 enum class NewtonStatus {
     /// The last step was small and shrinking as Newton's method does; the state is updated.
     converged,
-    /// The step stopped shrinking at the rounding floor with the residual there too; the state is updated.
+    /// The step stopped shrinking with every balance at its own rounding error; the state is updated.
     converged_at_rounding,
     /// Iterations used up or the iterate ran away; the state is as it was before the call.
     not_converged,
@@ -31,8 +31,6 @@ struct NewtonReport {
     std::vector<double> steps;
     /// Estimated remaining relative error of the densities (and of psi in kT/q).
     double iteration_error = 0;
-    /// Largest residual, as a correction in kT/q.
-    double residual = 0;
     /// Where the last step was largest: node, and 0 psi, 1 electrons, 2 holes.
     std::size_t worst_node = 0;
     int worst_unknown = 0;
@@ -54,10 +52,6 @@ struct NewtonOptions {
     /// letting densities take it. A little slower, but a floating region's level is then not disturbed by its
     /// edges.
     bool straight_when_small = false;
-    /// Solve Poisson's equation with both quasi-Fermi potentials held at zero: equilibrium. The step is
-    /// shortened until the energy of the convex problem no longer falls along it, so this converges from any
-    /// guess.
-    bool equilibrium = false;
 };
 
 /// Solves one system again and again: keeps its workspace and last factorisation.
@@ -75,15 +69,17 @@ class NewtonSolver {
     /// Solves at an applied voltage [kT/q] from `state`, updated only when converged.
     NewtonReport solve(State& state, double applied_voltage, const NewtonOptions& options = {});
 
-    /// Derivative of the unknowns with respect to the contact voltage, from the last factorisation (size 3
-    /// nodes), and of the contact voltage with respect to the applied one (1 without series resistance).
+    /// Derivative of the levels (BlockTridiagonal) with respect to the contact voltage at the last Jacobian
+    /// (size 3 nodes), and of the contact voltage with respect to the applied one (1 without series
+    /// resistance).
     struct Tangent {
         std::vector<double> by_contact_voltage;
         double contact_by_applied = 1;
         /// dJ/dV_contact / q [m^-2 s^-1 per kT/q].
         double flux_by_contact_voltage = 0;
     };
-    Tangent tangent() const;
+    /// Tangent at a converged state; `is_seen`: the last solve ended there and its last Jacobian serves.
+    Tangent tangent(const State& state, bool is_seen);
 
     /// Moves a state along a tangent by a change of the applied voltage [kT/q].
     void predict(State& state, const Tangent& tangent, double change) const;

@@ -7,6 +7,7 @@
 
 #include "core/base/error.hpp"
 #include "core/figures/terminal.hpp"
+#include "solvers/equilibrium.hpp"
 
 namespace bandwright {
 
@@ -40,21 +41,23 @@ BiasWalk::BiasWalk(const DiscreteSystem& system) : solver_(system) {}
 bool BiasWalk::start() { return start_from(neutral_state(solver_.system()), 0); }
 
 bool BiasWalk::start_from(State guess, double applied_voltage) {
-    guess.contact_voltage = solver_.system().series_resistance > 0 ? guess.contact_voltage : applied_voltage;
-    NewtonOptions options;
-    options.most_iterations = 100;
+    is_seen_ = is_fresh_ = false;
     if (applied_voltage == 0) {
-        options.equilibrium = true;
-        for (std::size_t node = 0; node < guess.nodes(); ++node)
-            guess.unknowns[3 * node + 1] = guess.unknowns[3 * node + 2] = 0;
+        report_ = solve_equilibrium(solver_.system(), guess, solver_.equations());
+        iterations_ += report_.iterations;
+        is_fresh_ = report_.converged();
+    } else {
+        if (solver_.system().series_resistance == 0) guess.contact_voltage = applied_voltage;
+        NewtonOptions options;
+        options.most_iterations = 100;
+        is_seen_ = is_fresh_ = solve(guess, applied_voltage, options);
     }
-    solve(guess, applied_voltage, options);
-    fresh_ = applied_voltage != 0;  // the equilibrium solve leaves Poisson's matrix alone in the workspace
     if (!report_.converged()) {
         message_ = describe_failure(solver_.system(), applied_voltage, report_);
         return false;
     }
-    accept(std::move(guess), applied_voltage);
+    state_ = std::move(guess);
+    voltage_ = applied_voltage;
     return true;
 }
 
@@ -69,20 +72,8 @@ bool BiasWalk::solve(State& guess, double applied_voltage, NewtonOptions options
             straight_when_small_ = options.straight_when_small;
             return true;
         }
-        if (options.equilibrium) break;
     }
     return false;
-}
-
-void BiasWalk::accept(State state, double applied_voltage) {
-    state_ = std::move(state);
-    voltage_ = applied_voltage;
-    if (applied_voltage != 0) return;
-    // Equilibrium: both quasi-Fermi potentials are zero exactly; rounding of the linear solve is not kept.
-    for (std::size_t node = 0; node < state_.nodes(); ++node)
-        state_.unknowns[3 * node + 1] = state_.unknowns[3 * node + 2] = 0;
-    state_.contact_voltage = 0;
-    fresh_ = false;
 }
 
 BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux,
@@ -94,15 +85,16 @@ BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux,
         const bool last = std::abs(remaining) <= step;
         const double change = last ? remaining : std::copysign(step, remaining);
         const double next = last ? target : voltage_ + change;
+        if (target == 0 && last) {  // equilibrium has its own equations
+            if (!start_from(state_, 0)) return Arrival::stopped;
+            break;
+        }
         State trial = state_;
-        equations();
-        solver_.predict(trial, solver_.tangent(), change);
+        solver_.predict(trial, solver_.tangent(state_, is_seen_), change);
         if (solver_.system().series_resistance == 0) trial.contact_voltage = next;
-        solve(trial, next, {});
-        fresh_ = true;
-        if (!report_.converged()) {
+        is_seen_ = is_fresh_ = solve(trial, next, {});
+        if (!is_fresh_) {
             ++rejected_;
-            fresh_ = false;
             step = 0.5 * std::min(step, std::abs(change));
             if (step < least_step) {
                 message_ = describe_failure(solver_.system(), next, report_);
@@ -110,7 +102,8 @@ BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux,
             }
             continue;
         }
-        accept(std::move(trial), next);
+        state_ = std::move(trial);
+        voltage_ = next;
         if (report_.iterations <= easy_iterations)
             step = std::min(most_step, std::max(step, 2 * std::abs(change)));
         step_ = step;
@@ -120,13 +113,11 @@ BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux,
 }
 
 const Equations& BiasWalk::equations() {
-    if (!fresh_) {
-        // After a rejected step the workspace holds another state: bring back this one, with its
-        // factorisation.
+    if (!is_fresh_) {
+        // After a rejected step the workspace holds another state: bring back this one.
         require(assemble(solver_.system(), state_, solver_.equations()),
                 "a converged state gives no finite number");
-        solver_.equations().jacobian.factorize();
-        fresh_ = true;
+        is_fresh_ = true;
     }
     return solver_.equations();
 }

@@ -40,7 +40,6 @@ class BiasWalk {
     const DiscreteSystem& system() const { return solver_.system(); }
 
   private:
-    void accept(State state, double applied_voltage);
     // Newton from a guess, with the kind of step that served last and, where that fails, the other one.
     bool solve(State& guess, double applied_voltage, NewtonOptions options);
 
@@ -51,7 +50,8 @@ class BiasWalk {
     NewtonReport report_;
     std::string message_;
     long iterations_ = 0, rejected_ = 0;
-    bool fresh_ = false;
+    // The workspace holds the equations of state_; its last Jacobian belongs to a step that ended there.
+    bool is_fresh_ = false, is_seen_ = false;
     bool straight_when_small_ = false;
 };
 

@@ -1,12 +1,11 @@
-// The equations: residual, Jacobian and the local quantities they are made of. One loop over cells, one over
-// nodes. Not for: coefficients (discrete_system.hpp) or solving (solvers/newton.hpp).
+// The equations: residual, Jacobian and the local quantities they are made of. One loop over ends, one over
+// cells, one over nodes. Not for: coefficients (discrete_system.hpp) or solving (solvers/newton.hpp).
 // SPDX-License-Identifier: MIT
 #pragma once
 
 #include <vector>
 
 #include "core/discretization/block_tridiagonal.hpp"
-#include "core/discretization/cell_flux.hpp"
 #include "core/discretization/discrete_system.hpp"
 
 namespace bandwright {
@@ -17,33 +16,45 @@ struct EndState {
     double n, p, ratio_n, ratio_p, log_gamma_n, log_gamma_p;
 };
 
-/// Net recombination of one half cell and its derivatives with respect to psi, phi_n, phi_p [m^-3 s^-1].
+/// Net recombination of one half cell [m^-3 s^-1] and its derivatives with respect to psi and phi_p. A common
+/// shift changes nothing, so the one with respect to phi_n is what is left.
 struct HalfRate {
-    double value, by_psi, by_phi_n, by_phi_p;
+    double value, by_psi, by_phi_p;
+    double by_phi_n() const { return -(by_psi + by_phi_p); }
 };
 
-/// Electron and hole flux of a cell with derivatives with respect to its six unknowns.
+/// Electron and hole flux of a cell [m^-2 s^-1].
 struct CellFluxes {
     double electron, hole;
-    /// By psi and phi of the left node, psi and phi of the right node.
-    std::array<double, 4> electron_by, hole_by;
 };
 
-/// Workspace and outcome of assemble().
+/// Workspace and outcome of assemble(). Ends are counted from top to bottom, one a node and one more where
+/// the material changes.
 struct Equations {
-    /// Rows: Poisson, electrons, holes of node 0, then node 1, ...; each divided by its diagonal, so that an
-    /// entry is a correction in kT/q. Size 3 nodes.
-    std::vector<double> residual;
-    /// The same before division: what is left of each balance (Poisson [m^-2], carriers [m^-2 s^-1]), size 3
-    /// nodes.
-    std::vector<double> balance;
-    /// Derivative of `balance` (contact voltage held fixed).
-    BlockTridiagonal jacobian;
-    /// Derivative of `balance` with respect to the contact voltage: rows of node 0 only.
+    /// Newton's system: fluxes, sources and their derivatives (contact voltage held fixed).
+    BlockTridiagonal newton;
+    /// Derivative of the sources with respect to the contact voltage: rows of node 0 only.
     std::array<double, 3> by_contact_voltage{};
-    std::vector<EndState> left, right;            // per cell
-    std::vector<HalfRate> rate_left, rate_right;  // per cell
-    std::vector<CellFluxes> flux;                 // per cell
+
+    EndState left(std::size_t cell) const { return end(left_end[cell]); }
+    EndState right(std::size_t cell) const { return end(left_end[cell] + 1); }
+    HalfRate rate_left(std::size_t cell) const { return rate_at(left_end[cell]); }
+    HalfRate rate_right(std::size_t cell) const { return rate_at(left_end[cell] + 1); }
+    CellFluxes flux(std::size_t cell) const { return {newton.electron_flux[cell], newton.hole_flux[cell]}; }
+    std::size_t cells() const { return left_end.size(); }
+
+    /// End at the left of each cell; its right one is the next.
+    std::vector<std::size_t> left_end;
+    /// Per end. The four degeneracy numbers are kept for Fermi-Dirac statistics alone.
+    std::vector<double> n, p, ratio_n, ratio_p, log_gamma_n, log_gamma_p;
+    std::vector<double> rate, rate_by_psi, rate_by_phi_p;
+
+  private:
+    EndState end(std::size_t e) const {
+        if (ratio_n.empty()) return {n[e], p[e], 1, 1, 0, 0};
+        return {n[e], p[e], ratio_n[e], ratio_p[e], log_gamma_n[e], log_gamma_p[e]};
+    }
+    HalfRate rate_at(std::size_t e) const { return {rate[e], rate_by_psi[e], rate_by_phi_p[e]}; }
 };
 
 /// Fills `equations` for a state.
@@ -55,7 +66,9 @@ struct Equations {
 /// Tests: unit/discretization/test_assemble.cpp (Jacobian against differences).
 bool assemble(const DiscreteSystem& system, const State& state, Equations& equations);
 
-/// Densities, fluxes and rates only, without the Jacobian's blocks and rows.
-bool evaluate(const DiscreteSystem& system, const State& state, Equations& equations);
+/// Rounding error of each balance of an assembled state: one unit in the last place of every term and of
+/// every unknown it depends on, size 3 nodes. A balance below a few of these cannot be made smaller.
+std::vector<double> rounding_of_balance(const DiscreteSystem& system, const State& state,
+                                        const Equations& equations);
 
 }  // namespace bandwright

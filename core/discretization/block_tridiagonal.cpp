@@ -3,186 +3,463 @@
 #include <algorithm>
 #include <cmath>
 
+#include "core/discretization/lane_pair.hpp"
+
 namespace bandwright {
 
 namespace {
 
-using Vector = std::array<double, 3>;
+template <class S>
+using Entries = std::array<S, 9>;
+template <class S>
+using Triple = std::array<S, 3>;
 
-Block product(const Block& a, const Block& b) {
-    Block c;
+template <class S>
+Triple<S> product(const Entries<S>& a, const Triple<S>& x) {
+    Triple<S> y;
+    for (std::size_t i = 0; i < 3; ++i) y[i] = a[3 * i] * x[0] + a[3 * i + 1] * x[1] + a[3 * i + 2] * x[2];
+    return y;
+}
+
+template <class S>
+Entries<S> product(const Entries<S>& a, const Entries<S>& b) {
+    Entries<S> c;
     for (std::size_t i = 0; i < 3; ++i)
         for (std::size_t j = 0; j < 3; ++j)
             c[3 * i + j] = a[3 * i] * b[j] + a[3 * i + 1] * b[3 + j] + a[3 * i + 2] * b[6 + j];
     return c;
 }
 
-Vector product(const Block& a, const Vector& x) {
-    Vector y;
-    for (std::size_t i = 0; i < 3; ++i) y[i] = a[3 * i] * x[0] + a[3 * i + 1] * x[1] + a[3 * i + 2] * x[2];
+// Inverse by cofactors, rows scaled by their largest entry; not finite where singular. A cofactor is a
+// difference of two products: an entry many decades below the others keeps its digits, which exchanges of
+// rows would drown.
+template <class S>
+Entries<S> inverse(const Entries<S>& matrix) {
+    Entries<S> a;
+    Triple<S> scale;
+    for (std::size_t i = 0; i < 3; ++i) {
+        const S largest = larger(larger(magnitude(matrix[3 * i]), magnitude(matrix[3 * i + 1])),
+                                 magnitude(matrix[3 * i + 2]));
+        scale[i] = 1.0 / largest;
+        for (std::size_t j = 0; j < 3; ++j) a[3 * i + j] = matrix[3 * i + j] * scale[i];
+    }
+    const Entries<S> cofactors{
+        a[4] * a[8] - a[5] * a[7], a[2] * a[7] - a[1] * a[8], a[1] * a[5] - a[2] * a[4],
+        a[5] * a[6] - a[3] * a[8], a[0] * a[8] - a[2] * a[6], a[2] * a[3] - a[0] * a[5],
+        a[3] * a[7] - a[4] * a[6], a[1] * a[6] - a[0] * a[7], a[0] * a[4] - a[1] * a[3]};
+    const S factor = 1.0 / (a[0] * cofactors[0] + a[1] * cofactors[3] + a[2] * cofactors[6]);
+    const Triple<S> column{factor * scale[0], factor * scale[1], factor * scale[2]};
+    Entries<S> result;
+    for (std::size_t i = 0; i < 3; ++i)
+        for (std::size_t j = 0; j < 3; ++j) result[3 * i + j] = cofactors[3 * i + j] * column[j];
+    return result;
+}
+
+// Row of the levels that stands for one unknown: x_0 = z_0, x_1 = z_0 + z_1, x_2 = z_0 + z_1 + z_2.
+void set_row(Block& block, std::size_t row) {
+    for (std::size_t j = 0; j < 3; ++j) block[3 * row + j] = j <= row ? 1 : 0;
+}
+
+/// One cell as a node sees it that lies on its outer side.
+template <class S>
+struct Cell {
+    S dielectric, electron_shift, electron_near, electron_sum, hole_shift, hole_near, hole_sum;
+    Triple<S> flux;
+    Entries<S> near() const {
+        return {-dielectric, S{},         S{},       -electron_shift, electron_near,
+                S{},         -hole_shift, hole_near, hole_near};
+    }
+    Entries<S> far() const {
+        return {dielectric,
+                S{},
+                S{},
+                electron_shift,
+                electron_sum - electron_near,
+                S{},
+                hole_shift,
+                hole_sum - hole_near,
+                hole_sum - hole_near};
+    }
+    // near times a vector: Poisson's row has one entry, the electrons' two.
+    Triple<S> near_times(const Triple<S>& x) const {
+        return {-(dielectric * x[0]), electron_near * x[1] - electron_shift * x[0],
+                hole_near * (x[1] + x[2]) - hole_shift * x[0]};
+    }
+    Triple<S> near_size(const Triple<S>& x) const {
+        return {dielectric * magnitude(x[0]),
+                magnitude(electron_near * x[1]) + magnitude(electron_shift * x[0]),
+                magnitude(hole_near) * (magnitude(x[1]) + magnitude(x[2])) + magnitude(hole_shift * x[0])};
+    }
+};
+
+template <class S>
+Triple<S> size_of_product(const Entries<S>& a, const Triple<S>& x) {
+    Triple<S> y;
+    for (std::size_t i = 0; i < 3; ++i)
+        y[i] = magnitude(a[3 * i] * x[0]) + magnitude(a[3 * i + 1] * x[1]) + magnitude(a[3 * i + 2] * x[2]);
     return y;
 }
 
-// A block whose columns belong to the unknowns, in the shift basis: its first column becomes the sum of each
-// row.
-Block in_shift_basis(Block block) {
-    for (std::size_t i = 0; i < 3; ++i) block[3 * i] += block[3 * i + 1] + block[3 * i + 2];
-    return block;
+template <class S>
+Triple<S> column(const Entries<S>& a, std::size_t j) {
+    return {a[j], a[3 + j], a[6 + j]};
 }
 
-// Inverse by cofactors, rows scaled by their largest entry; false when singular or not finite. A cofactor is
-// a difference of two products: an entry many decades below the others keeps its digits, which exchanges of
-// rows would drown.
-bool invert(const Block& matrix, Block& inverse) {
-    Block a;
-    Vector scale;
-    for (std::size_t i = 0; i < 3; ++i) {
-        const double largest =
-            std::max({std::abs(matrix[3 * i]), std::abs(matrix[3 * i + 1]), std::abs(matrix[3 * i + 2])});
-        if (!(largest > 0) || !std::isfinite(largest)) return false;
-        scale[i] = 1 / largest;
-        for (std::size_t j = 0; j < 3; ++j) a[3 * i + j] = matrix[3 * i + j] * scale[i];
-    }
-    const Block cofactors{a[4] * a[8] - a[5] * a[7], a[2] * a[7] - a[1] * a[8], a[1] * a[5] - a[2] * a[4],
-                          a[5] * a[6] - a[3] * a[8], a[0] * a[8] - a[2] * a[6], a[2] * a[3] - a[0] * a[5],
-                          a[3] * a[7] - a[4] * a[6], a[1] * a[6] - a[0] * a[7], a[0] * a[4] - a[1] * a[3]};
-    const double determinant = a[0] * cofactors[0] + a[1] * cofactors[3] + a[2] * cofactors[6];
-    if (!(std::abs(determinant) > 0)) return false;
-    const double factor = 1 / determinant;
-    bool finite = true;
-    for (std::size_t i = 0; i < 3; ++i)
-        for (std::size_t j = 0; j < 3; ++j) {
-            inverse[3 * i + j] = cofactors[3 * i + j] * factor * scale[j];
-            finite = finite && std::isfinite(inverse[3 * i + j]);
+/// What elimination carries inward.
+template <class S, std::size_t sides>
+struct Carried {
+    Entries<S> admittance;
+    std::array<Triple<S>, sides> flux;
+};
+
+/// What a node brings with it: own terms by its second and third level, and sources.
+template <class S, std::size_t sides>
+struct Node {
+    S potential_by_gap, potential_by_split, hole_by_gap, hole_by_split;
+    std::array<Triple<S>, sides> source;
+};
+
+// Takes a node and the cell on its inner side: `carried` becomes that of the next node, `source` becomes y.
+// Returns C. The second of two sides has no present flux.
+template <class S, std::size_t sides>
+Entries<S> pass(const Cell<S>& cell, Node<S, sides>& node, Carried<S, sides>& carried) {
+    Entries<S> m = carried.admittance;
+    m[1] -= node.potential_by_gap;
+    m[2] -= node.potential_by_split;
+    m[4] += node.hole_by_gap;
+    m[5] += node.hole_by_split;
+    m[7] -= node.hole_by_gap;
+    m[8] -= node.hole_by_split;
+    Entries<S> b = cell.near();
+    for (std::size_t e = 0; e < 9; ++e) b[e] -= m[e];
+    const Entries<S> i = inverse(b);
+    const Triple<S> far[3] = {{cell.dielectric, cell.electron_shift, cell.hole_shift},
+                              {S{}, cell.electron_sum - cell.electron_near, cell.hole_sum - cell.hole_near},
+                              {S{}, S{}, cell.hole_sum - cell.hole_near}};
+    const Triple<S> sum[3] = {{}, {S{}, cell.electron_sum, cell.hole_sum}, {S{}, S{}, cell.hole_sum}};
+    Entries<S> coupling;
+    for (std::size_t j = 0; j < 3; ++j) {
+        Triple<S> excess = column(m, j);
+        for (std::size_t r = 0; r < 3; ++r) excess[r] -= sum[j][r];
+        const Triple<S> slip = product(i, excess), whole = product(i, far[j]);
+        const S most = larger(larger(magnitude(slip[0]), magnitude(slip[1])), magnitude(slip[2]));
+        Triple<S> c = slip;
+        c[j] += 1.0;
+        for (std::size_t r = 0; r < 3; ++r) c[r] = chosen(most, S{} + 0.5, c[r], -whole[r]);
+        const Triple<S> outside = product(m, c), outside_size = size_of_product(m, c);
+        const Triple<S> inside = cell.near_times(slip), inside_size = cell.near_size(slip);
+        for (std::size_t r = 0; r < 3; ++r) {
+            coupling[3 * r + j] = c[r];
+            carried.admittance[3 * r + j] = chosen(outside_size[r], inside_size[r] + magnitude(sum[j][r]),
+                                                   outside[r], inside[r] + sum[j][r]);
         }
-    return finite;
+    }
+    for (std::size_t s = 0; s < sides; ++s) {
+        Triple<S> c, drive;
+        for (std::size_t r = 0; r < 3; ++r) {
+            c[r] = carried.flux[s][r] - node.source[s][r];
+            drive[r] = s == 0 ? c[r] - cell.flux[r] : c[r];
+        }
+        const Triple<S> y = product(i, drive);
+        const Triple<S> outside = product(m, y), outside_size = size_of_product(m, y);
+        const Triple<S> inside = cell.near_times(y), inside_size = cell.near_size(y);
+        for (std::size_t r = 0; r < 3; ++r) {
+            const S flux = s == 0 ? cell.flux[r] : S{};
+            carried.flux[s][r] = chosen(outside_size[r] + magnitude(c[r]), inside_size[r] + magnitude(flux),
+                                        c[r] + outside[r], flux + inside[r]);
+        }
+        node.source[s] = y;
+    }
+    return coupling;
 }
 
-// Row of the shift basis that stands for one unknown: x_0 = z_0, x_1 = z_0 + z_1, x_2 = z_0 + z_2.
-void set_row(Block& block, std::size_t row) {
-    for (std::size_t j = 0; j < 3; ++j) block[3 * row + j] = j == 0 || j == row ? 1 : 0;
+// The outermost node: nothing is carried, some rows set their unknown.
+template <std::size_t sides>
+Block begin(const Cell<double>& cell, const Block& own, const std::array<bool, 3>& is_set,
+            Carried<double, sides>& carried, std::array<Triple<double>, sides>& source) {
+    Block b = cell.near();
+    const Block far = cell.far();
+    for (std::size_t e = 0; e < 9; ++e) b[e] += own[e];
+    Block seen = far;
+    for (std::size_t r = 0; r < 3; ++r)
+        if (is_set[r]) {
+            set_row(b, r);
+            for (std::size_t j = 0; j < 3; ++j) seen[3 * r + j] = 0;
+        }
+    const Block i = inverse(b);
+    Block coupling = product(i, seen);
+    for (double& entry : coupling) entry = -entry;
+    // A row that is not set has the two forms of pass(), with M = -own.
+    carried.admittance = product(cell.near(), coupling);
+    for (std::size_t j = 0; j < 3; ++j) {
+        const Triple<double> c = column(coupling, j), inside_size = cell.near_size(c),
+                             outside = product(own, c), outside_size = size_of_product(own, c);
+        for (std::size_t r = 0; r < 3; ++r) {
+            double& entry = carried.admittance[3 * r + j];
+            entry = !is_set[r] && outside_size[r] < inside_size[r] + std::abs(far[3 * r + j])
+                        ? -outside[r]
+                        : entry + far[3 * r + j];
+        }
+    }
+    for (std::size_t s = 0; s < sides; ++s) {
+        Triple<double> drive, flux;
+        for (std::size_t r = 0; r < 3; ++r) {
+            flux[r] = s == 0 ? cell.flux[r] : 0;
+            drive[r] = -source[s][r] - (is_set[r] ? 0 : flux[r]);
+        }
+        const Triple<double> y = product(i, drive), inside = cell.near_times(y),
+                             inside_size = cell.near_size(y), outside = product(own, y),
+                             outside_size = size_of_product(own, y);
+        for (std::size_t r = 0; r < 3; ++r)
+            carried.flux[s][r] =
+                !is_set[r] && outside_size[r] + std::abs(source[s][r]) < inside_size[r] + std::abs(flux[r])
+                    ? -source[s][r] - outside[r]
+                    : flux[r] + inside[r];
+        source[s] = y;
+    }
+    return coupling;
+}
+
+Block own_block(const BlockTridiagonal& matrix, std::size_t node) {
+    const double p1 = matrix.potential_by_gap[node], p2 = matrix.potential_by_split[node],
+                 h1 = matrix.hole_by_gap[node], h2 = matrix.hole_by_split[node];
+    Block own{0, p1, p2, 0, -h1, -h2, 0, h1, h2};
+    for (std::size_t e = 0; e < 9; ++e) {
+        if (node == 0) own[e] += matrix.first_own[e];
+        if (node + 1 == matrix.blocks()) own[e] += matrix.last_own[e];
+    }
+    return own;
+}
+
+Cell<double> cell_from_top(const BlockTridiagonal& m, std::size_t cell) {
+    return {m.dielectric[cell],    m.electron_shift[cell],
+            m.electron_left[cell], m.electron_sum[cell],
+            m.hole_shift[cell],    m.hole_left[cell],
+            m.hole_sum[cell],      {m.potential_flux[cell], m.electron_flux[cell], m.hole_flux[cell]}};
+}
+
+// Seen from below the flux of a cell counts the other way and its ends change places.
+Cell<double> cell_from_bottom(const BlockTridiagonal& m, std::size_t cell) {
+    return {m.dielectric[cell],
+            m.electron_shift[cell],
+            m.electron_left[cell] - m.electron_sum[cell],
+            -m.electron_sum[cell],
+            m.hole_shift[cell],
+            m.hole_left[cell] - m.hole_sum[cell],
+            -m.hole_sum[cell],
+            {-m.potential_flux[cell], -m.electron_flux[cell], -m.hole_flux[cell]}};
+}
+
+Cell<LanePair> beside(const Cell<double>& a, const Cell<double>& b) {
+    return {pair(a.dielectric, b.dielectric),
+            pair(a.electron_shift, b.electron_shift),
+            pair(a.electron_near, b.electron_near),
+            pair(a.electron_sum, b.electron_sum),
+            pair(a.hole_shift, b.hole_shift),
+            pair(a.hole_near, b.hole_near),
+            pair(a.hole_sum, b.hole_sum),
+            {pair(a.flux[0], b.flux[0]), pair(a.flux[1], b.flux[1]), pair(a.flux[2], b.flux[2])}};
+}
+
+template <std::size_t sides>
+using Steps = std::array<std::span<double>, sides>;
+
+template <std::size_t sides>
+std::array<Triple<double>, sides> source_of(const BlockTridiagonal& m, std::size_t node,
+                                            const std::array<double, 3>& pull) {
+    std::array<Triple<double>, sides> source{};
+    for (std::size_t r = 0; r < 3; ++r) {
+        source[0][r] = m.source[3 * node + r];
+        if (sides > 1 && node == 0) source[sides - 1][r] = -pull[r];
+    }
+    return source;
+}
+
+template <std::size_t sides>
+void keep(const Steps<sides>& x, std::size_t node, const std::array<Triple<double>, sides>& y) {
+    for (std::size_t s = 0; s < sides; ++s)
+        for (std::size_t r = 0; r < 3; ++r) x[s][3 * node + r] = y[s][r];
+}
+
+// Nodes 1 .. pairs-1 from the top and last-1 .. last-pairs+1 from the bottom, in step.
+template <std::size_t sides>
+void pass_in_pairs(const BlockTridiagonal& m, std::size_t pairs, std::vector<double>& storage,
+                   std::array<Carried<double, sides>, 2>& end, const Steps<sides>& x) {
+    const std::size_t last = m.blocks() - 1;
+    Carried<LanePair, sides> carried;
+    for (std::size_t e = 0; e < 9; ++e)
+        carried.admittance[e] = pair(end[0].admittance[e], end[1].admittance[e]);
+    for (std::size_t s = 0; s < sides; ++s)
+        for (std::size_t r = 0; r < 3; ++r) carried.flux[s][r] = pair(end[0].flux[s][r], end[1].flux[s][r]);
+    for (std::size_t k = 1; k < pairs; ++k) {
+        const std::size_t a = k, b = last - k;
+        Node<LanePair, sides> node{pair(m.potential_by_gap[a], m.potential_by_gap[b]),
+                                   pair(m.potential_by_split[a], m.potential_by_split[b]),
+                                   pair(m.hole_by_gap[a], m.hole_by_gap[b]),
+                                   pair(m.hole_by_split[a], m.hole_by_split[b]),
+                                   {}};
+        for (std::size_t r = 0; r < 3; ++r)
+            node.source[0][r] = pair(m.source[3 * a + r], m.source[3 * b + r]);
+        const Entries<LanePair> coupling =
+            pass(beside(cell_from_top(m, a), cell_from_bottom(m, b - 1)), node, carried);
+        for (std::size_t e = 0; e < 9; ++e) store(&storage[18 * k + 2 * e], coupling[e]);
+        for (std::size_t s = 0; s < sides; ++s)
+            for (std::size_t r = 0; r < 3; ++r) {
+                x[s][3 * a + r] = node.source[s][r][0];
+                x[s][3 * b + r] = node.source[s][r][1];
+            }
+    }
+    for (std::size_t lane = 0; lane < 2; ++lane) {
+        for (std::size_t e = 0; e < 9; ++e) end[lane].admittance[e] = carried.admittance[e][lane];
+        for (std::size_t s = 0; s < sides; ++s)
+            for (std::size_t r = 0; r < 3; ++r) end[lane].flux[s][r] = carried.flux[s][r][lane];
+    }
+}
+
+// The middle node, where both sides meet.
+template <std::size_t sides>
+void join(const BlockTridiagonal& m, std::size_t node, const std::array<Carried<double, sides>, 2>& end,
+          const Steps<sides>& x) {
+    Block b = own_block(m, node);
+    for (std::size_t e = 0; e < 9; ++e) b[e] -= end[0].admittance[e] + end[1].admittance[e];
+    auto c = source_of<sides>(m, node, {});
+    const bool is_last = node + 1 == m.blocks();
+    for (std::size_t r = 0; r < 3; ++r) {
+        const bool is_set = is_last && m.last_is_set[r];
+        if (is_set) set_row(b, r);
+        for (std::size_t s = 0; s < sides; ++s)
+            c[s][r] = (is_set ? 0 : end[0].flux[s][r] + end[1].flux[s][r]) - c[s][r];
+    }
+    const Block i = inverse(b);
+    for (std::size_t s = 0; s < sides; ++s) c[s] = product(i, c[s]);
+    keep(x, node, c);
+}
+
+template <std::size_t sides>
+bool solve_all(const BlockTridiagonal& m, std::vector<double>& storage, const Steps<sides>& x,
+               const std::array<double, 3>& pull) {
+    const std::size_t nodes = m.blocks(), last = nodes - 1;
+    const std::size_t pairs = last / 2;       // nodes below the middle
+    const std::size_t middle = last - pairs;  // as many above it, or one more
+    std::array<Carried<double, sides>, 2> end{};
+    const auto keep_coupling = [&](std::size_t step, std::size_t lane, const Block& coupling) {
+        for (std::size_t e = 0; e < 9; ++e) storage[18 * step + 2 * e + lane] = coupling[e];
+    };
+    auto source = source_of<sides>(m, 0, pull);
+    keep_coupling(0, 0, begin(cell_from_top(m, 0), own_block(m, 0), m.first_is_set, end[0], source));
+    keep(x, 0, source);
+    if (pairs > 0) {
+        source = source_of<sides>(m, last, pull);
+        keep_coupling(
+            0, 1, begin(cell_from_bottom(m, last - 1), own_block(m, last), m.last_is_set, end[1], source));
+        keep(x, last, source);
+    }
+    if (pairs > 1) pass_in_pairs(m, pairs, storage, end, x);
+    if (middle > pairs && middle > 1) {  // the one more above the middle
+        const std::size_t a = middle - 1;
+        Node<double, sides> node{m.potential_by_gap[a], m.potential_by_split[a], m.hole_by_gap[a],
+                                 m.hole_by_split[a], source_of<sides>(m, a, pull)};
+        keep_coupling(a, 0, pass(cell_from_top(m, a), node, end[0]));
+        keep(x, a, node.source);
+    }
+    join(m, middle, end, x);
+    const auto back = [&](std::size_t node, std::size_t next, std::size_t step, std::size_t lane) {
+        for (std::size_t s = 0; s < sides; ++s)
+            for (std::size_t r = 0; r < 3; ++r) {
+                const double* row = &storage[18 * step + 6 * r + lane];
+                x[s][3 * node + r] +=
+                    row[0] * x[s][3 * next] + row[2] * x[s][3 * next + 1] + row[4] * x[s][3 * next + 2];
+            }
+    };
+    if (middle > pairs) back(middle - 1, middle, middle - 1, 0);
+    for (std::size_t k = pairs; k-- > 0;) {
+        back(k, k + 1, k, 0);
+        back(last - k, last - k - 1, k, 1);
+    }
+    // A singular block leaves a number that is not finite.
+    double check = 0;
+    for (std::size_t s = 0; s < sides; ++s)
+        for (std::size_t e = 0; e < 3 * nodes; ++e) check += 0 * x[s][e];
+    return check == 0;
 }
 
 }  // namespace
 
 void BlockTridiagonal::resize(std::size_t nodes) {
-    left.assign(nodes - 1, Block{});
-    right.assign(nodes - 1, Block{});
-    shunt.assign(nodes, Block{});
-    inverse_.assign(nodes, Block{});
-    coupling_.assign(nodes, Block{});
-    admittance_.assign(nodes, Block{});
+    for (std::vector<double>* values :
+         {&dielectric, &electron_shift, &electron_left, &electron_sum, &hole_shift, &hole_left, &hole_sum,
+          &potential_flux, &electron_flux, &hole_flux})
+        values->assign(nodes - 1, 0.0);
+    for (std::vector<double>* values : {&potential_by_gap, &potential_by_split, &hole_by_gap, &hole_by_split})
+        values->assign(nodes, 0.0);
+    source.assign(3 * nodes, 0.0);
+    coupling_.assign(18 * (nodes / 2 + 1), 0.0);
+    first_own = last_own = {};
     first_is_set = last_is_set = {};
 }
 
-std::size_t BlockTridiagonal::factorize() {
-    const std::size_t last = blocks() - 1;
-    Block from_left{};  // Y
-    for (std::size_t k = 0; k <= last; ++k) {
-        Block m = in_shift_basis(shunt[k]);
-        for (std::size_t e = 0; e < 9; ++e) m[e] = from_left[e] - m[e];
-        Block b;
-        if (k < last) {
-            b = in_shift_basis(left[k]);
-            for (std::size_t e = 0; e < 9; ++e) b[e] -= m[e];
-        } else {
-            for (std::size_t e = 0; e < 9; ++e) b[e] = -m[e];
-        }
-        for (std::size_t i = 0; i < 3; ++i) {
-            if (k == 0 && first_is_set[i]) set_row(b, i);
-            if (k == last && last_is_set[i]) set_row(b, i);
-        }
-        if (!invert(b, inverse_[k])) return k;
-        admittance_[k] = m;
-        if (k == last) break;
-        Block out = in_shift_basis(right[k]);
-        if (k == 0) {
-            // Rows that set their unknown do not look to the right.
-            Block seen = out;
-            for (std::size_t i = 0; i < 3; ++i)
-                if (first_is_set[i])
-                    for (std::size_t j = 0; j < 3; ++j) seen[3 * i + j] = 0;
-            coupling_[0] = product(inverse_[0], seen);
-            for (double& entry : coupling_[0]) entry = -entry;
-            from_left = product(in_shift_basis(left[0]), coupling_[0]);
-            for (std::size_t e = 0; e < 9; ++e) from_left[e] += out[e];
-            continue;
-        }
-        coupling_[k] = product(inverse_[k], out);
-        for (double& entry : coupling_[k]) entry = -entry;
-        // A common shift passes a cell unchanged but for M: B^-1 left = 1 + B^-1 M on it. Exact where M is
-        // small beside the cell; where it is not, the product itself is.
-        const Vector slip = product(inverse_[k], Vector{m[0], m[3], m[6]});
-        if (std::max({std::abs(slip[0]), std::abs(slip[1]), std::abs(slip[2])}) < 0.5)
-            for (std::size_t i = 0; i < 3; ++i) coupling_[k][3 * i] = slip[i] + (i == 0 ? 1 : 0);
-        from_left = product(m, coupling_[k]);
-    }
-    return blocks();
+bool BlockTridiagonal::solve(std::span<double> step) { return solve_all<1>(*this, coupling_, {step}, {}); }
+
+bool BlockTridiagonal::solve(std::span<double> step, std::span<double> answer,
+                             const std::array<double, 3>& pull) {
+    return solve_all<2>(*this, coupling_, {step, answer}, pull);
 }
 
-void BlockTridiagonal::solve(std::span<double> x) const {
-    const std::size_t last = blocks() - 1;
-    Vector carried{};  // f
-    for (std::size_t k = 0; k <= last; ++k) {
-        Vector c{x[3 * k], x[3 * k + 1], x[3 * k + 2]};
-        if (k == 0) {
-            const Vector y = product(inverse_[0], c);
-            carried = product(in_shift_basis(left[0]), y);
-            for (std::size_t i = 0; i < 3; ++i) x[i] = y[i];
-            continue;
-        }
-        for (std::size_t i = 0; i < 3; ++i) c[i] += carried[i];
-        if (k == last)
-            for (std::size_t i = 0; i < 3; ++i)
-                if (last_is_set[i]) c[i] = x[3 * k + i];
-        const Vector y = product(inverse_[k], c), through = product(admittance_[k], y);
-        for (std::size_t i = 0; i < 3; ++i) {
-            x[3 * k + i] = y[i];
-            carried[i] = c[i] + through[i];
-        }
-    }
-    for (std::size_t k = last; k-- > 0;) {
-        const Vector next = product(coupling_[k], Vector{x[3 * k + 3], x[3 * k + 4], x[3 * k + 5]});
-        for (std::size_t i = 0; i < 3; ++i) x[3 * k + i] += next[i];
-    }
-    for (std::size_t k = 0; k <= last; ++k) {
-        x[3 * k + 1] += x[3 * k];
-        x[3 * k + 2] += x[3 * k];
-    }
+double BlockTridiagonal::balance(std::size_t node, std::size_t row) const {
+    const std::vector<double>& flux = row == 0 ? potential_flux : row == 1 ? electron_flux : hole_flux;
+    const bool is_set = (node == 0 && first_is_set[row]) || (node + 1 == blocks() && last_is_set[row]);
+    if (is_set) return source[3 * node + row];
+    return (node + 1 < blocks() ? flux[node] : 0) - (node > 0 ? flux[node - 1] : 0) + source[3 * node + row];
 }
+
+namespace {
+
+// A block whose columns are levels, by (psi, phi_n, phi_p): dz/dx = (1, 0, 0; -1, 1, 0; 0, -1, 1).
+Block by_potentials(const Block& levels) {
+    Block block;
+    for (std::size_t r = 0; r < 3; ++r) {
+        block[3 * r] = levels[3 * r] - levels[3 * r + 1];
+        block[3 * r + 1] = levels[3 * r + 1] - levels[3 * r + 2];
+        block[3 * r + 2] = levels[3 * r + 2];
+    }
+    return block;
+}
+
+}  // namespace
 
 Block BlockTridiagonal::lower_block(std::size_t node) const {
     Block block{};
     if (node == 0) return block;
-    for (std::size_t i = 0; i < 3; ++i)
-        if (node + 1 < blocks() || !last_is_set[i])
-            for (std::size_t j = 0; j < 3; ++j) block[3 * i + j] = -left[node - 1][3 * i + j];
+    block = by_potentials(cell_from_top(*this, node - 1).near());
+    for (std::size_t r = 0; r < 3; ++r)
+        for (std::size_t j = 0; j < 3; ++j)
+            block[3 * r + j] = node + 1 == blocks() && last_is_set[r] ? 0 : -block[3 * r + j];
     return block;
 }
 
 Block BlockTridiagonal::upper_block(std::size_t node) const {
     Block block{};
     if (node + 1 == blocks()) return block;
-    for (std::size_t i = 0; i < 3; ++i)
-        if (node > 0 || !first_is_set[i])
-            for (std::size_t j = 0; j < 3; ++j) block[3 * i + j] = right[node][3 * i + j];
+    block = by_potentials(cell_from_top(*this, node).far());
+    for (std::size_t r = 0; r < 3; ++r)
+        if (node == 0 && first_is_set[r])
+            for (std::size_t j = 0; j < 3; ++j) block[3 * r + j] = 0;
     return block;
 }
 
 Block BlockTridiagonal::diagonal_block(std::size_t node) const {
-    Block block{};
-    for (std::size_t i = 0; i < 3; ++i) {
-        const bool is_set = (node == 0 && first_is_set[i]) || (node + 1 == blocks() && last_is_set[i]);
-        for (std::size_t j = 0; j < 3; ++j) {
-            if (is_set)
-                block[3 * i + j] = i == j ? 1 : 0;
-            else
-                block[3 * i + j] = shunt[node][3 * i + j] +
-                                   (node + 1 < blocks() ? left[node][3 * i + j] : 0) -
-                                   (node > 0 ? right[node - 1][3 * i + j] : 0);
-        }
+    Block block = own_block(*this, node);
+    if (node + 1 < blocks()) {
+        const Block near = cell_from_top(*this, node).near();
+        for (std::size_t e = 0; e < 9; ++e) block[e] += near[e];
     }
-    return block;
+    if (node > 0) {
+        const Block far = cell_from_top(*this, node - 1).far();
+        for (std::size_t e = 0; e < 9; ++e) block[e] -= far[e];
+    }
+    for (std::size_t r = 0; r < 3; ++r)
+        if ((node == 0 && first_is_set[r]) || (node + 1 == blocks() && last_is_set[r])) set_row(block, r);
+    return by_potentials(block);
 }
 
 }  // namespace bandwright

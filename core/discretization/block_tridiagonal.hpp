@@ -1,5 +1,5 @@
-// The linear system of a chain of boxes: three unknowns a node, three fluxes a cell; factorisation and
-// solution. Not for: what the fluxes mean (assemble.hpp).
+// The linear system of a chain of boxes: three unknowns a node, three fluxes a cell; elimination from both
+// ends. Not for: what the fluxes mean (assemble.hpp).
 //
 // SPDX-License-Identifier: MIT
 #pragma once
@@ -14,47 +14,75 @@ namespace bandwright {
 /// Row-major 3x3 block.
 using Block = std::array<double, 9>;
 
-/// A block-tridiagonal matrix kept as what it is made of. Row block k of the matrix says
-///     (flux of cell k) - (flux of cell k-1) + shunt_k x_k = right-hand side,
-///     flux of cell k = left_k x_k + right_k x_(k+1);
-/// at the first and last node a row may instead set its unknown.
+/// Newton's linear system, kept as what it is made of. For node k, with T the fluxes after the step:
+///     T_k - T_(k-1) + (source of node k) + (own terms of node k) z_k = 0,
+///     T_k = (present flux of cell k) + near_k z_k + far_k z_(k+1).
 ///
-/// Elimination runs from the first node to the last and carries the admittance Y of everything to the left:
-/// the flux into node k is Y_k x_k + f_k. With M = Y - shunt and B = left - M,
-///     Y_(k+1) = -M B^-1 right,   f_(k+1) = (f + c) + M B^-1 (f + c),
-/// products and sums alone. A plain elimination would form left - left B^-1 left by subtraction and lose an
-/// admittance sixteen decades below the cell's own; a floating region's level hangs on just that. This is the
-/// matrix form of the rule of Grassmann, Taksar and Heyman for Markov chains [Grassmann1985]. A shift of all
-/// unknowns alike changes no flux, so the first unknown is carried as that shift and the other two as
-/// differences from it. Cost: linear in the number of nodes; no allocation after the first call for a size.
+/// The unknowns are changes of *levels*: z = (psi, phi_n - psi, phi_p - phi_n). A common shift of all three
+/// potentials changes no flux and no rate, so the first column of a cell is the same at both ends but for its
+/// sign; a rate depends on the third level, and no conductance has to be found as a difference of others.
+///
+/// Elimination runs from both ends to the middle, two nodes at a time in the two lanes of a vector register.
+/// It carries what everything outside lets through: T = Y z_k + f into node k. With M = Y - own terms,
+/// c = f - source and B = near - M,
+///     z_k = C z_(k+1) + y,   C = -B^-1 far = 1 + slip,   slip = B^-1 (M - near - far),   y = B^-1 (c -
+///     flux), Y' = M C = near slip + (near + far),   f' = c + M y = flux + near y.
+/// Each of the last two has two forms, equal but for rounding: where a cell conducts better than what lies
+/// outside the first keeps its digits, where worse the second; entry by entry the one whose terms are smaller
+/// is taken. A plain elimination forms differences of large conductances and of rounded balances, and loses a
+/// leakage sixteen decades below the cell's own; a floating region's level hangs on just that. The first
+/// forms are the rule of Grassmann, Taksar and Heyman for Markov chains [Grassmann1985] in matrices; the rest
+/// is derived. Cost: linear in the number of nodes; no allocation after the first call for a size.
 class BlockTridiagonal {
   public:
     /// Sets the number of nodes (at least 2); contents become zero, no unknown is set.
     void resize(std::size_t nodes);
-    std::size_t blocks() const { return shunt.size(); }
+    std::size_t blocks() const { return potential_by_gap.size(); }
 
-    /// Derivative of a cell's fluxes with respect to its left and right node, size nodes - 1.
-    std::vector<Block> left, right;
-    /// Derivative of a node's own terms, size nodes.
-    std::vector<Block> shunt;
-    /// Rows that set their unknown, at the first and the last node.
+    /// Derivatives of the fluxes of a cell, size nodes - 1 each. Poisson: dielectric * (psi_right -
+    /// psi_left). Carriers: by the first level of the right node (of the left node: the same, negative), by
+    /// phi of the left node at fixed psi, and by phi of both nodes at fixed psi (the small sum of two large
+    /// numbers).
+    std::vector<double> dielectric;
+    std::vector<double> electron_shift, electron_left, electron_sum;
+    std::vector<double> hole_shift, hole_left, hole_sum;
+    /// Present fluxes of a cell, size nodes - 1 each.
+    std::vector<double> potential_flux, electron_flux, hole_flux;
+    /// Sources of a node, rows as the unknowns, size 3 nodes; of a row that sets its unknown: the unknown
+    /// minus what it is set to.
+    std::vector<double> source;
+    /// Own terms of a node by its second and third level, size nodes each: of Poisson's row, and of the hole
+    /// row (the electron row has the same with the other sign).
+    std::vector<double> potential_by_gap, potential_by_split, hole_by_gap, hole_by_split;
+    /// Further own terms of the first and the last node, and rows there that set their unknown.
+    Block first_own{}, last_own{};
     std::array<bool, 3> first_is_set{}, last_is_set{};
 
-    /// Factorises. Returns the first singular node, or blocks() when all is well.
-    std::size_t factorize();
-    /// Solves with the last factorisation, in place; size 3 blocks().
-    void solve(std::span<double> right_hand_side) const;
+    /// Step of all levels to the solution, size 3 blocks(). False when a block is singular (the numbers are
+    /// then without meaning).
+    bool solve(std::span<double> step);
+    /// The same, and beside it the answer to `pull` (rows of the first node) instead of sources and fluxes.
+    bool solve(std::span<double> step, std::span<double> answer, const std::array<double, 3>& pull);
 
-    /// Blocks of the matrix as such, for tests and products.
+    /// What is left of a balance, T_k - T_(k-1) + source at present.
+    double balance(std::size_t node, std::size_t row) const;
+
+    /// Blocks of the matrix by (psi, phi_n, phi_p), for tests and products.
     Block lower_block(std::size_t node) const;
     Block diagonal_block(std::size_t node) const;
     Block upper_block(std::size_t node) const;
 
   private:
-    // In the basis (shift; difference of the second; difference of the third).
-    std::vector<Block> inverse_;     // B^-1
-    std::vector<Block> coupling_;    // x_k = coupling x_(k+1) + B^-1 (f + c)
-    std::vector<Block> admittance_;  // M
+    // Per pair of nodes, the two lanes beside each other: 9 entries of coupling (z_k = coupling z_next + y).
+    std::vector<double> coupling_;
 };
+
+/// Potentials from levels, in place: (z0, z0 + z1, z0 + z1 + z2) for every node.
+inline void potentials_from_levels(std::span<double> levels) {
+    for (std::size_t k = 0; k + 2 < levels.size(); k += 3) {
+        levels[k + 1] += levels[k];
+        levels[k + 2] += levels[k + 1];
+    }
+}
 
 }  // namespace bandwright

@@ -13,8 +13,7 @@ namespace bandwright {
 
 namespace {
 
-EndCoefficients end_coefficients(const Structure& structure, const Material& material) {
-    const Bands bands = bands_at(material, structure.temperature);
+EndCoefficients end_coefficients(const Structure& structure, const Material& material, const Bands& bands) {
     const double kT = constants::thermal_voltage(structure.temperature);  // [eV]
     EndCoefficients end{};
     end.affinity = bands.electron_affinity / kT;
@@ -29,7 +28,7 @@ EndCoefficients end_coefficients(const Structure& structure, const Material& mat
     end.tau_n = end.tau_p = 1;
     for (const std::string& kind : recombination_in_force(structure, material)) {
         if (kind == "srh") {
-            end.has_srh = true;
+            end.srh = 1;
             end.tau_n = material.value("electron_lifetime");
             end.tau_p = material.value("hole_lifetime");
         } else if (kind == "auger") {
@@ -75,14 +74,12 @@ ContactCoefficients contact_coefficients(const DiscreteSystem& system, const Con
     const Structure& structure = system.structure;
     const std::size_t cell = is_top ? 0 : system.cells() - 1;
     const EndCoefficients& end = system.of_cell(cell);
-    const Material& material =
-        structure.materials[structure.layers[system.mesh.layer_of_cell[cell]].material];
     // The doping at the contact itself (a half cell's mean would be first order); the bottom end belongs to
     // the last layer.
     const double bottom = system.mesh.position.back();
     const double x = is_top ? system.mesh.position.front() : std::nextafter(bottom, 0.0);
     const double net = doping_at(structure, system.mesh.layer_of_cell[cell], x).net();
-    const double psi = neutral_potential(bands_at(material, structure.temperature),
+    const double psi = neutral_potential(system.bands[system.material_of_cell[cell]],
                                          structure.models.statistics, structure.temperature, net) /
                        system.thermal_voltage;
     ContactCoefficients result{};
@@ -105,7 +102,15 @@ DiscreteSystem discretize(const Structure& structure, Mesh mesh) {
     system.fermi_dirac = structure.models.statistics == Statistics::fermi_dirac;
     system.series_resistance = structure.top.series_resistance + structure.bottom.series_resistance;
     for (const Material& material : structure.materials)
-        system.materials.push_back(end_coefficients(structure, material));
+        system.bands.push_back(bands_at(material, structure.temperature));
+    const std::size_t last_layer = structure.layers.size() - 1;
+    const double at_bottom = neutral_potential(
+        system.bands[structure.layers[last_layer].material], structure.models.statistics,
+        structure.temperature,
+        doping_at(structure, last_layer, std::nextafter(system.mesh.position.back(), 0.0)).net());
+    for (Bands& bands : system.bands) bands.electron_affinity += at_bottom;
+    for (std::size_t k = 0; k < structure.materials.size(); ++k)
+        system.materials.push_back(end_coefficients(structure, structure.materials[k], system.bands[k]));
     const std::size_t cells = system.cells();
     system.material_of_cell.resize(cells);
     for (std::vector<double>* values : {&system.dielectric, &system.electron_speed, &system.hole_speed,
@@ -135,6 +140,10 @@ DiscreteSystem discretize(const Structure& structure, Mesh mesh) {
         system.electron_speed[cell] = mean_speed(Carrier::electron);
         system.hole_speed[cell] = mean_speed(Carrier::hole);
     }
+    for (std::size_t cell = 0; cell < cells; ++cell)
+        if (cell == 0 || system.material_of_cell[cell] != system.material_of_cell[cell - 1])
+            system.runs.push_back(cell);
+    system.runs.push_back(cells);
     system.top = contact_coefficients(system, structure.top, true);
     system.bottom = contact_coefficients(system, structure.bottom, false);
     return system;
@@ -147,10 +156,8 @@ State neutral_state(const DiscreteSystem& system) {
     for (std::size_t node = 0; node < system.nodes(); ++node) {
         const std::size_t cell = node < system.cells() ? node : node - 1;
         const double net = node < system.cells() ? system.net_left[cell] : system.net_right[cell];
-        const Material& material =
-            structure.materials[structure.layers[system.mesh.layer_of_cell[cell]].material];
         state.unknowns[3 * node] =
-            neutral_potential(bands_at(material, structure.temperature), structure.models.statistics,
+            neutral_potential(system.bands[system.material_of_cell[cell]], structure.models.statistics,
                               structure.temperature, net) /
             system.thermal_voltage;
     }

@@ -21,9 +21,8 @@ struct EndCoefficients {
     double log_intrinsic_squared, intrinsic_squared;
     /// nie exp(+-e_t/kT) [m^-3].
     double n1, p1;
-    /// Recombination: 1/tau is zero where Shockley-Read-Hall is off.
-    double tau_n, tau_p;
-    bool has_srh;
+    /// Recombination; `srh` is 1 where Shockley-Read-Hall is on, else 0.
+    double tau_n, tau_p, srh;
     double auger_n, auger_p, radiative;
     /// kT-free band numbers for output: relative permittivity, chi [eV], Eg [eV].
     double relative_permittivity, affinity_energy, bandgap;
@@ -48,6 +47,9 @@ struct DiscreteSystem {
     /// Series resistance of both contacts [ohm m^2].
     double series_resistance = 0;
 
+    /// Bands per material, with affinities counted from the neutral bottom contact: psi is about zero there,
+    /// so that it keeps its digits.
+    std::vector<Bands> bands;
     std::vector<EndCoefficients> materials;
     /// Index into materials, per cell (size n - 1).
     std::vector<std::size_t> material_of_cell;
@@ -56,6 +58,8 @@ struct DiscreteSystem {
     /// Net doping of the left and the right end of each cell [m^-3], size n - 1; their mean times the width
     /// is the cell's dose.
     std::vector<double> net_left, net_right;
+    /// Runs of cells of one material: first cell of each, and the number of cells at the end.
+    std::vector<std::size_t> runs;
     ContactCoefficients top, bottom;
 
     std::size_t nodes() const { return mesh.nodes(); }

@@ -18,10 +18,10 @@ std::vector<double> displacement_at_nodes(const DiscreteSystem& system, const St
 
 /// Space charge at the two ends of a cell, in elementary charges [m^-3].
 inline double charge_left(const DiscreteSystem& s, const Equations& e, std::size_t cell) {
-    return e.left[cell].p - e.left[cell].n + s.net_left[cell];
+    return e.left(cell).p - e.left(cell).n + s.net_left[cell];
 }
 inline double charge_right(const DiscreteSystem& s, const Equations& e, std::size_t cell) {
-    return e.right[cell].p - e.right[cell].n + s.net_right[cell];
+    return e.right(cell).p - e.right(cell).n + s.net_right[cell];
 }
 
 /// Field [V/m] from eps E / q in the material of a cell.

@@ -52,7 +52,7 @@ double hermite(double t, double h, double left, double left_slope, double right,
 // cell.
 double log_density(const View& v, std::size_t cell, bool electrons, double position) {
     const double h = v.system.mesh.width(cell), t = (position - v.x(cell)) / h;
-    const EndState &l = v.equations.left[cell], &r = v.equations.right[cell];
+    const EndState l = v.equations.left(cell), r = v.equations.right(cell);
     const double inverse_length = 1 / v.system.thermal_voltage;
     const double slope_psi_l = -field_in_cell(v.system, cell, v.displacement[cell]) * inverse_length;
     const double slope_psi_r = -field_in_cell(v.system, cell, v.displacement[cell + 1]) * inverse_length;
@@ -71,7 +71,7 @@ std::optional<std::pair<std::size_t, double>> electrical_junction(const View& v,
                                                                   const Metallurgical& junction) {
     std::optional<std::pair<std::size_t, double>> best;
     for (std::size_t cell = 0; cell < v.system.cells(); ++cell) {
-        const EndState &l = v.equations.left[cell], &r = v.equations.right[cell];
+        const EndState l = v.equations.left(cell), r = v.equations.right(cell);
         const double left = std::log(l.n / l.p), right = std::log(r.n / r.p);
         const bool rises = left <= 0 && right > 0, falls = left > 0 && right <= 0;
         if (junction.p_above ? !rises : !falls) continue;
@@ -230,7 +230,7 @@ void find_extrapolated(const View& v, const std::vector<Metallurgical>& junction
         const std::size_t cell = light == 1 ? node : node - 1;
         const std::size_t next = light == 1 ? node + 1 : node - 1;
         dose += dose_between(v, node, next);
-        const EndState& s = light == 1 ? v.equations.right[cell] : v.equations.left[cell];
+        const EndState s = light == 1 ? v.equations.right(cell) : v.equations.left(cell);
         const double net = std::abs(light == 1 ? v.system.net_right[cell] : v.system.net_left[cell]);
         if (net > 0 && (s.n + s.p) / net < fewest) {
             fewest = (s.n + s.p) / net;
@@ -267,9 +267,8 @@ BoxNeutrality box_neutrality(const View& v, std::size_t node) {
 // Potential [V] that a neutral region of the doping at a place would have.
 double neutral_potential_at(const View& v, std::size_t cell, double position) {
     const Structure& s = v.system.structure;
-    const Material& material = s.materials[s.layers[v.system.mesh.layer_of_cell[cell]].material];
-    return neutral_potential(bands_at(material, s.temperature), s.models.statistics, s.temperature,
-                             v.net_at(cell, position));
+    return neutral_potential(v.system.bands[v.system.material_of_cell[cell]], s.models.statistics,
+                             s.temperature, v.net_at(cell, position));
 }
 
 // Neutral potential [V] of the nearest neutral region outward from an edge: at the first place where the

@@ -111,9 +111,9 @@ void append_profiles(const DiscreteSystem& system, const State& state, const Equ
     for (const Place& place : places(system)) {
         const std::size_t node = place.node();
         const EndCoefficients& end = system.of_cell(place.cell);
-        const EndState& s = place.right ? equations.right[place.cell] : equations.left[place.cell];
-        const HalfRate& rate =
-            place.right ? equations.rate_right[place.cell] : equations.rate_left[place.cell];
+        const EndState s = place.right ? equations.right(place.cell) : equations.left(place.cell);
+        const HalfRate rate =
+            place.right ? equations.rate_right(place.cell) : equations.rate_left(place.cell);
         const double half = 0.5 * system.mesh.width(place.cell) * (place.right ? 1 : -1);
         const double vacuum = -state.psi(node) * kT;
         const double conduction = vacuum - end.affinity_energy, valence = conduction - end.bandgap;

@@ -10,8 +10,8 @@ TerminalCurrent terminal_current(const DiscreteSystem& system, const State& stat
     TerminalCurrent current;
     double least_n = INFINITY, least_p = INFINITY;
     for (std::size_t cell = 0; cell < system.cells(); ++cell) {
-        const double n = system.electron_speed[cell] * (equations.left[cell].n + equations.right[cell].n);
-        const double p = system.hole_speed[cell] * (equations.left[cell].p + equations.right[cell].p);
+        const double n = system.electron_speed[cell] * (equations.left(cell).n + equations.right(cell).n);
+        const double p = system.hole_speed[cell] * (equations.left(cell).p + equations.right(cell).p);
         if (n < least_n) {
             least_n = n;
             current.electron_cell = cell;
@@ -26,7 +26,7 @@ TerminalCurrent terminal_current(const DiscreteSystem& system, const State& stat
     for (std::size_t node = std::min(a, b) + 1; node <= std::max(a, b); ++node)
         integral += box_rate(system, equations, node);
     if (b < a) integral = -integral;
-    current.flux = equations.flux[a].electron + equations.flux[b].hole + integral;
+    current.flux = equations.flux(a).electron + equations.flux(b).hole + integral;
     const auto phi_size = [&](std::size_t cell) {
         return std::max({1.0, std::abs(state.phi_n(cell)), std::abs(state.phi_p(cell))});
     };
@@ -37,21 +37,23 @@ TerminalCurrent terminal_current(const DiscreteSystem& system, const State& stat
 double terminal_derivative(const DiscreteSystem& system, const Equations& equations,
                            const TerminalCurrent& current, std::span<const double> change) {
     const std::size_t a = current.electron_cell, b = current.hole_cell;
-    const CellFluxes &fa = equations.flux[a], &fb = equations.flux[b];
-    double sum = fa.electron_by[0] * change[3 * a] + fa.electron_by[1] * change[3 * a + 1] +
-                 fa.electron_by[2] * change[3 * a + 3] + fa.electron_by[3] * change[3 * a + 4] +
-                 fb.hole_by[0] * change[3 * b] + fb.hole_by[1] * change[3 * b + 2] +
-                 fb.hole_by[2] * change[3 * b + 3] + fb.hole_by[3] * change[3 * b + 5];
+    const BlockTridiagonal& m = equations.newton;
+    const auto level = [&](std::size_t node, std::size_t k) { return change[3 * node + k]; };
+    const double electrons = m.electron_shift[a] * (level(a + 1, 0) - level(a, 0)) +
+                             m.electron_left[a] * (level(a, 1) - level(a + 1, 1)) +
+                             m.electron_sum[a] * level(a + 1, 1);
+    const double holes = m.hole_shift[b] * (level(b + 1, 0) - level(b, 0)) +
+                         m.hole_left[b] * (level(b, 1) + level(b, 2) - level(b + 1, 1) - level(b + 1, 2)) +
+                         m.hole_sum[b] * (level(b + 1, 1) + level(b + 1, 2));
     double integral = 0;
     for (std::size_t node = std::min(a, b) + 1; node <= std::max(a, b); ++node) {
         const auto half = [&](const HalfRate& rate) {
-            return rate.by_psi * change[3 * node] + rate.by_phi_n * change[3 * node + 1] +
-                   rate.by_phi_p * change[3 * node + 2];
+            return -rate.by_psi * level(node, 1) + rate.by_phi_p * level(node, 2);
         };
-        integral += 0.5 * (system.mesh.width(node - 1) * half(equations.rate_right[node - 1]) +
-                           system.mesh.width(node) * half(equations.rate_left[node]));
+        integral += 0.5 * (system.mesh.width(node - 1) * half(equations.rate_right(node - 1)) +
+                           system.mesh.width(node) * half(equations.rate_left(node)));
     }
-    return sum + (b < a ? -integral : integral);
+    return electrons + holes + (b < a ? -integral : integral);
 }
 
 CurrentProfile current_profile(const DiscreteSystem& system, const Equations& equations,
@@ -66,8 +68,8 @@ CurrentProfile current_profile(const DiscreteSystem& system, const Equations& eq
         for (std::size_t cell = start; cell-- > 0;)
             values[cell] = values[cell + 1] - sign * box_rate(system, equations, cell + 1);
     };
-    integrate(profile.electron, current.electron_cell, equations.flux[current.electron_cell].electron, 1);
-    integrate(profile.hole, current.hole_cell, equations.flux[current.hole_cell].hole, -1);
+    integrate(profile.electron, current.electron_cell, equations.flux(current.electron_cell).electron, 1);
+    integrate(profile.hole, current.hole_cell, equations.flux(current.hole_cell).hole, -1);
     return profile;
 }
 

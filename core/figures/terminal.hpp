@@ -24,12 +24,12 @@ struct TerminalCurrent {
 ///
 /// The sum of both fluxes of one cell would drown a leakage current in the rounding noise of the majority
 /// flux; here every term is free of cancellation. Derivation: integrate both continuity equations between a
-/// and b. equations: filled by evaluate() or assemble() for `state`. Tests: verification/ (generation current
+/// and b. equations: filled by assemble() for `state`. Tests: verification/ (generation current
 /// of Sah, Noyce and Shockley), unit/figures/test_terminal.cpp
 TerminalCurrent terminal_current(const DiscreteSystem& system, const State& state,
                                  const Equations& equations);
 
-/// Derivative of the flux along a change of the unknowns (size 3 nodes) [m^-2 s^-1].
+/// Derivative of the flux along a change of the levels of BlockTridiagonal (size 3 nodes) [m^-2 s^-1].
 double terminal_derivative(const DiscreteSystem& system, const Equations& equations,
                            const TerminalCurrent& current, std::span<const double> change);
 
@@ -43,8 +43,8 @@ CurrentProfile current_profile(const DiscreteSystem& system, const Equations& eq
 
 /// Recombination of the whole box of an inner node [m^-2 s^-1].
 inline double box_rate(const DiscreteSystem& system, const Equations& equations, std::size_t node) {
-    return 0.5 * (system.mesh.width(node - 1) * equations.rate_right[node - 1].value +
-                  system.mesh.width(node) * equations.rate_left[node].value);
+    return 0.5 * (system.mesh.width(node - 1) * equations.rate_right(node - 1).value +
+                  system.mesh.width(node) * equations.rate_left(node).value);
 }
 
 }  // namespace bandwright

@@ -93,39 +93,47 @@ ValueAndSlope above_zero(double eta) {
     return {front * eta * root * sum, front * root * weighted};
 }
 
-// gamma = F / z as a function of z = exp(eta) <= 1, and z d(ln gamma)/dz.
-Degeneracy below(double z) {
+// F = z gamma as a function of z = exp(eta) <= 1, with ln gamma and d(ln F)/d(eta).
+Occupation below(double z) {
     if (z < short_series_limit) {
         // F/z = sum (-z)^k / (k+1)^(3/2); six terms leave z^6 / 18.5 < 1e-17 at exp(-6).
         constexpr double c1 = 0.35355339059327376, c2 = 0.19245008972987526, c3 = 0.125,
                          c4 = 0.08944271909999159, c5 = 0.06804138174397717;
         const double tail = z * (c1 - z * (c2 - z * (c3 - z * (c4 - z * c5))));
         const double slope = z * (c1 - z * (2 * c2 - z * (3 * c3 - z * (4 * c4 - z * 5 * c5))));
-        return {std::log1p(-tail), 1 - slope / (1 - tail)};
+        // ln(1 - tail) by its series: tail is below 9e-4 here, the next term below 1e-19 of it.
+        const double log_gamma =
+            -tail *
+            (1 + tail * (1.0 / 2 + tail * (1.0 / 3 + tail * (1.0 / 4 + tail * (1.0 / 5 + tail / 6)))));
+        return {z * (1 - tail), log_gamma, 1 - slope / (1 - tail)};
     }
     const ValueAndSlope p = chebyshev(below_zero, 2 * z - 1);
-    return {std::log(p.value), 1 + 2 * z * p.slope / p.value};
+    return {z * p.value, std::log(p.value), 1 + 2 * z * p.slope / p.value};
 }
 
 }  // namespace
 
-Degeneracy degeneracy(double eta) {
-    if (eta <= 0) return below(std::exp(eta));
+Occupation occupation(double eta, double exp_eta) {
+    if (eta <= 0) return below(exp_eta);
     const ValueAndSlope f = above_zero(eta);
-    return {std::log(f.value) - eta, f.slope / f.value};
+    return {f.value, std::log(f.value) - eta, f.slope / f.value};
+}
+
+Degeneracy degeneracy(double eta) {
+    const Occupation o = occupation(eta, eta <= 0 ? std::exp(eta) : 0);
+    return {o.log_gamma, o.ratio};
 }
 
 double fermi_half(double eta) {
     if (eta > 0) return above_zero(eta).value;
-    const double z = std::exp(eta);
-    return z * std::exp(below(z).log_gamma);
+    return below(std::exp(eta)).integral;
 }
 
 double fermi_minus_half(double eta) {
     if (eta > 0) return above_zero(eta).slope;
     const double z = std::exp(eta);
-    const Degeneracy d = below(z);
-    return z * std::exp(d.log_gamma) * d.ratio;
+    const Occupation d = below(z);
+    return d.integral * d.ratio;
 }
 
 double inverse_fermi_half(double u) {

@@ -24,6 +24,15 @@ struct Degeneracy {
 /// [Blakemore1982]; fit computed for this program. Tests: unit/models/test_fermi_integral.cpp
 Degeneracy degeneracy(double eta);
 
+/// F_1/2 itself beside its degeneracy numbers.
+struct Occupation {
+    double integral, log_gamma, ratio;
+};
+
+/// The same as `degeneracy`, with exp(eta) given (as it comes from a loop over many). Errors and source
+/// there.
+Occupation occupation(double eta, double exp_eta);
+
 /// F_1/2(eta) [1]; accuracy at `degeneracy`.
 double fermi_half(double eta);
 

@@ -73,13 +73,13 @@ TEST(Demos, fluxes_equal_the_integrated_currents_wherever_rounding_lets_that_be_
                 const auto rounding = [&](double speed, double left, double right, double phi) {
                     return speed * std::max(left, right) * 2e-16 * std::max(1.0, std::abs(phi));
                 };
-                const bool electrons = rounding(system.electron_speed[cell], e.left[cell].n, e.right[cell].n,
+                const bool electrons = rounding(system.electron_speed[cell], e.left(cell).n, e.right(cell).n,
                                                 walk.state().phi_n(cell)) < 1e-10 * J;
-                const bool holes = rounding(system.hole_speed[cell], e.left[cell].p, e.right[cell].p,
+                const bool holes = rounding(system.hole_speed[cell], e.left(cell).p, e.right(cell).p,
                                             walk.state().phi_p(cell)) < 1e-10 * J;
                 if (electrons)
-                    worst = std::max(worst, std::abs(e.flux[cell].electron - profile.electron[cell]) / J);
-                if (holes) worst = std::max(worst, std::abs(e.flux[cell].hole - profile.hole[cell]) / J);
+                    worst = std::max(worst, std::abs(e.flux(cell).electron - profile.electron[cell]) / J);
+                if (holes) worst = std::max(worst, std::abs(e.flux(cell).hole - profile.hole[cell]) / J);
                 judged += electrons || holes;
             }
             const double share = static_cast<double>(judged) / static_cast<double>(system.cells());

@@ -4,32 +4,13 @@
 #include <fmt/format.h>
 
 #include <algorithm>
-#include <cmath>
-#include <cstdint>
 #include <cstdlib>
+
+#include "tests/support/dice.hpp"
 
 namespace bandwright {
 
 namespace {
-
-constexpr std::uint64_t golden_step = 0x9e3779b97f4a7c15ULL;
-
-struct Dice {
-    std::uint64_t state;
-
-    std::uint64_t next() {
-        state += golden_step;
-        std::uint64_t z = state;
-        z = (z ^ (z >> 30)) * 0xbf58476d1ce4e5b9ULL;
-        z = (z ^ (z >> 27)) * 0x94d049bb133111ebULL;
-        return z ^ (z >> 31);
-    }
-    double unit() { return static_cast<double>(next() >> 11) * 0x1p-53; }
-    double between(double low, double high) { return low + (high - low) * unit(); }
-    double log_between(double low, double high) { return low * std::exp(std::log(high / low) * unit()); }
-    int below(int count) { return static_cast<int>(count * unit()); }
-    bool chance(double share) { return unit() < share; }
-};
 
 std::string number(double value) { return fmt::format("{:.3e}", value); }
 

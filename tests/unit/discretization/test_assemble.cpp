@@ -58,8 +58,8 @@ double worst_disagreement(const DiscreteSystem& system, const State& state, std:
                           double spoil = 0) {
     Equations at, plus, minus;
     EXPECT_TRUE(assemble(system, state, at));
-    BlockTridiagonal matrix = at.jacobian;
-    if (spoil != 0) matrix.right[4][4] *= 1 + spoil;
+    BlockTridiagonal matrix = at.newton;
+    if (spoil != 0) matrix.electron_left[4] *= 1 + spoil;
     double worst = 0;
     const char* names[] = {"psi", "phi_n", "phi_p"};
     for (std::size_t node = 0; node < system.nodes(); ++node)
@@ -73,8 +73,8 @@ double worst_disagreement(const DiscreteSystem& system, const State& state, std:
             for (std::size_t row_node = node > 0 ? node - 1 : 0;
                  row_node <= std::min(node + 1, system.nodes() - 1); ++row_node)
                 for (std::size_t r = 0; r < 3; ++r) {
-                    const std::size_t row = 3 * row_node + r;
-                    const double difference = (plus.balance[row] - minus.balance[row]) / (2 * h);
+                    const double difference =
+                        (plus.newton.balance(row_node, r) - minus.newton.balance(row_node, r)) / (2 * h);
                     const Block lower = matrix.lower_block(row_node),
                                 diagonal = matrix.diagonal_block(row_node),
                                 upper = matrix.upper_block(row_node);
@@ -130,8 +130,8 @@ TEST(Assemble, equilibrium_has_no_flux_at_all) {
     const DiscreteSystem system = system_for({"", Statistics::fermi_dirac, {"srh"}, false, true});
     Equations equations;
     assemble(system, neutral_state(system), equations);
-    for (const CellFluxes& flux : equations.flux) {
-        EXPECT_EQ(flux.electron, 0);
-        EXPECT_EQ(flux.hole, 0);
+    for (std::size_t cell = 0; cell < system.cells(); ++cell) {
+        EXPECT_EQ(equations.flux(cell).electron, 0);
+        EXPECT_EQ(equations.flux(cell).hole, 0);
     }
 }

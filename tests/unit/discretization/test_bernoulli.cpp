@@ -61,3 +61,22 @@ TEST(Bernoulli, stays_finite_and_positive_far_out) {
         EXPECT_GE(b.plus, 0);
     }
 }
+
+TEST(Bernoulli, of_many_arguments_equals_the_one_of_each) {
+    using namespace bandwright;
+    BernoulliLanes<64> lanes{};
+    std::size_t count = 0;
+    for (double y = 1e-12; count < 60; y *= 1.75, ++count) lanes.argument[count] = count % 2 ? y : -y;
+    for (const double x : {0.0, 0.1, -0.1, 699.0}) lanes.argument[count++] = x;
+    bernoulli_of(lanes, count);
+    for (std::size_t k = 0; k < count; ++k) {
+        const double x = lanes.argument[k];
+        if (std::abs(x) > 700) continue;  // 0 there, as stated
+        const Bernoulli one = bernoulli(x), many = lanes.at(k);
+        EXPECT_NEAR(many.plus / one.plus, 1, 2e-15) << x;
+        EXPECT_NEAR(many.minus / one.minus, 1, 2e-15) << x;
+        // The closed form of the slope loses digits as 1/x^2 just above 0.1.
+        EXPECT_NEAR(many.slope_plus / one.slope_plus, 1, 5e-13) << x;
+        EXPECT_NEAR(many.slope_minus / one.slope_minus, 1, 5e-13) << x;
+    }
+}

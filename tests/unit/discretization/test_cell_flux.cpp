@@ -10,6 +10,13 @@ using namespace bandwright;
 
 namespace {
 
+CellFlux electron_flux(double speed, const Bernoulli& b, double a, double left, double right) {
+    return bandwright::electron_flux(speed, b, a, std::expm1(-std::abs(a)), left, right);
+}
+CellFlux hole_flux(double speed, const Bernoulli& b, double a, double left, double right) {
+    return bandwright::hole_flux(speed, b, a, std::expm1(-std::abs(a)), left, right);
+}
+
 // Plain textbook form, with its cancellation: D/h (B(u) n_right - B(-u) n_left).
 double textbook(double speed, double u, double left, double right) {
     const Bernoulli b = bernoulli(u);
