@@ -72,7 +72,8 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
     // Solves every sample on a mesh; states of an older mesh serve as guesses.
     const auto solve_samples = [&](const DiscreteSystem& system, const auto& visit, bool patient) {
         BiasWalk walk(system);
-        if (!walk.start()) {
+        const std::optional<State>& equilibrium = samples.front().state;  // of an older mesh
+        if (!(equilibrium ? walk.start_from(*equilibrium, 0) : walk.start())) {
             result.ok = false;
             result.message = walk.message();
         }
@@ -94,7 +95,7 @@ AdaptedMesh adapted_mesh(const Structure& structure, const std::vector<double>& 
                 if ((sample.voltage > 0) != (walk.voltage() > 0) && walk.voltage() != 0) {
                     result.iterations += walk.iterations();
                     walk = BiasWalk(system);
-                    walk.start();
+                    walk.start_from(*samples.front().state, 0);
                 }
                 const BiasWalk::Arrival arrival = walk.walk_to(sample.voltage, most_flux, should_stop);
                 if (arrival != BiasWalk::Arrival::arrived) {

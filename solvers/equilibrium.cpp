@@ -7,7 +7,8 @@ namespace bandwright {
 
 namespace {
 
-constexpr int most_iterations = 200;
+// A density e^m too high falls by e in an iteration; band steps of several eV at 77 K make m several hundred.
+constexpr int most_iterations = 2000;
 constexpr double tolerance = 1e-10;        // [kT/q]
 constexpr double most_at_rounding = 1e-4;  // [kT/q] a step above this has not converged
 
@@ -22,7 +23,7 @@ std::vector<double> newton_step(const BlockTridiagonal& matrix) {
     double carried = matrix.potential_flux[0] - matrix.dielectric[0] * step[0];
     for (std::size_t k = 1; k + 1 < nodes; ++k) {
         const double conductance = matrix.dielectric[k], flux = matrix.potential_flux[k];
-        const double m = admittance + matrix.potential_by_gap[k], c = carried - matrix.source[3 * k];
+        const double m = admittance + matrix.potential_by_both[k], c = carried - matrix.source[3 * k];
         const double y = (flux - c) / (conductance + m);
         coupling[k] = conductance / (conductance + m);
         admittance = m * coupling[k];

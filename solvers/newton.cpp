@@ -43,9 +43,9 @@ double log_change(double r) {
     return r < least_change ? deepest_fall : std::log1p(r);
 }
 
-// Relative changes of the densities that a change of the levels means.
-double electron_change(const double* levels) { return -levels[1]; }
-double hole_change(const double* levels) { return levels[1] + levels[2]; }
+// Relative changes of the densities that a change of (psi, phi_n - psi, phi_p - psi) means.
+double electron_change(const double* gaps) { return -gaps[1]; }
+double hole_change(const double* gaps) { return gaps[2]; }
 
 // Whether every density changes by less than this share of itself. Such a step is taken straight, levels and
 // all: the quasi-Fermi level of a floating region then stays as flat as the linear step has it, undisturbed
@@ -62,6 +62,9 @@ double capped(double change, double cap) {
     return std::abs(change) <= cap ? change
                                    : std::copysign(cap * (1 + std::log(std::abs(change) / cap)), change);
 }
+
+// A density that is wrong by this factor shows a step too far; the next iterations would be wasted.
+constexpr double run_away = 1e60;
 
 // A step above this has not converged, whatever the balances say.
 constexpr double most_at_rounding = 1e-4;
@@ -156,10 +159,10 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
         const bool straight = options.straight_when_small && is_small(d);
         double worst = 0;
         for (std::size_t node = 0; node < system.nodes(); ++node) {
-            const double* levels = &d[3 * node];
-            const double rn = electron_change(levels), rp = hole_change(levels);
-            const double sizes[3] = {std::abs(levels[0]), std::abs(rn), std::abs(rp)};
-            const double moved = capped(levels[0], options.cap);
+            const double* gaps = &d[3 * node];
+            const double rn = electron_change(gaps), rp = hole_change(gaps);
+            const double sizes[3] = {std::abs(gaps[0]), std::abs(rn), std::abs(rp)};
+            const double moved = capped(gaps[0], options.cap);
             x[3 * node] = moved;
             x[3 * node + 1] = moved - (straight ? rn : log_change(rn));
             x[3 * node + 2] = moved + (straight ? rp : log_change(rp));
@@ -172,16 +175,16 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
         }
         // Contacts take their values at once.
         const auto set_contact = [&](std::size_t node, const ContactCoefficients& contact) {
-            const double* levels = &d[3 * node];
-            x[3 * node] = levels[0];
-            if (!contact.electron_velocity) x[3 * node + 1] = levels[0] + levels[1];
-            if (!contact.hole_velocity) x[3 * node + 2] = levels[0] + (levels[1] + levels[2]);
+            const double* gaps = &d[3 * node];
+            x[3 * node] = gaps[0];
+            if (!contact.electron_velocity) x[3 * node + 1] = gaps[0] + gaps[1];
+            if (!contact.hole_velocity) x[3 * node + 2] = gaps[0] + gaps[2];
         };
         set_contact(0, system.top);
         set_contact(system.nodes() - 1, system.bottom);
         x[size] = change_of_contact;
         report.steps.push_back(worst);
-        return std::isfinite(worst);
+        return worst < run_away;
     };
     const std::string words = work.kinsol.solve(unknowns, options.most_iterations, residual, step);
     if (done) {
@@ -223,10 +226,10 @@ void NewtonSolver::predict(State& state, const Tangent& tangent, double change) 
     const double inner = change * tangent.contact_by_applied;
     const std::vector<double>& w = tangent.by_contact_voltage;
     for (std::size_t node = 0; node < state.nodes(); ++node) {
-        const double levels[3] = {inner * w[3 * node], inner * w[3 * node + 1], inner * w[3 * node + 2]};
-        state.unknowns[3 * node] += levels[0];
-        state.unknowns[3 * node + 1] += levels[0] - log_change(electron_change(levels));
-        state.unknowns[3 * node + 2] += levels[0] + log_change(hole_change(levels));
+        const double gaps[3] = {inner * w[3 * node], inner * w[3 * node + 1], inner * w[3 * node + 2]};
+        state.unknowns[3 * node] += gaps[0];
+        state.unknowns[3 * node + 1] += gaps[0] - log_change(electron_change(gaps));
+        state.unknowns[3 * node + 2] += gaps[0] + log_change(hole_change(gaps));
     }
     state.contact_voltage += inner;
 }

@@ -69,9 +69,8 @@ class NewtonSolver {
     /// Solves at an applied voltage [kT/q] from `state`, updated only when converged.
     NewtonReport solve(State& state, double applied_voltage, const NewtonOptions& options = {});
 
-    /// Derivative of the levels (BlockTridiagonal) with respect to the contact voltage at the last Jacobian
-    /// (size 3 nodes), and of the contact voltage with respect to the applied one (1 without series
-    /// resistance).
+    /// Derivative of psi, phi_n - psi, phi_p - psi with respect to the contact voltage (size 3 nodes), and of
+    /// the contact voltage with respect to the applied one (1 without series resistance).
     struct Tangent {
         std::vector<double> by_contact_voltage;
         double contact_by_applied = 1;

@@ -80,7 +80,7 @@ void rates(const DiscreteSystem& system, const EndCoefficients& end, const Chunk
     expm1_of_negative(change.data(), change.data(), count);
     const double *n = &equations.n[first_end], *p = &equations.p[first_end];
     double *value = &equations.rate[first_end], *by_psi = &equations.rate_by_psi[first_end],
-           *by_phi_p = &equations.rate_by_phi_p[first_end];
+           *by_phi_n = &equations.rate_by_phi_n[first_end], *by_phi_p = &equations.rate_by_phi_p[first_end];
     const EndCoefficients coefficients = end;
     if (system.fermi_dirac) {
         const double *ratio_n = &equations.ratio_n[first_end], *ratio_p = &equations.ratio_p[first_end];
@@ -92,6 +92,7 @@ void rates(const DiscreteSystem& system, const EndCoefficients& end, const Chunk
                                                           gamma_p[i], ratio_n[i], ratio_p[i]});
             value[i] = r.value;
             by_psi[i] = r.by_psi;
+            by_phi_n[i] = r.by_phi_n;
             by_phi_p[i] = r.by_phi_p;
         }
         return;
@@ -100,6 +101,7 @@ void rates(const DiscreteSystem& system, const EndCoefficients& end, const Chunk
         const SourceRate r = half_rate(coefficients, {n[i], p[i], split[i], change[i]});
         value[i] = r.value;
         by_psi[i] = r.by_psi;
+        by_phi_n[i] = r.by_phi_n;
         by_phi_p[i] = r.by_phi_p;
     }
 }
@@ -118,7 +120,8 @@ void fluxes(const DiscreteSystem& system, const ChunkPotentials& at, std::size_t
         fall_p[i] = -std::abs(change_p[i]);
         const double change = at.psi[i + 1] - at.psi[i];
         b_n.argument[i] = b_p.argument[i] = change;
-        m.potential_flux[first_cell + i] = system.dielectric[first_cell + i] * change;
+        m.dielectric[first_cell + i] = system.dielectric[first_cell + i];
+        m.potential_flux[first_cell + i] = m.dielectric[first_cell + i] * change;
     }
     expm1_of_negative(fall_n.data(), fall_n.data(), count);
     expm1_of_negative(fall_p.data(), fall_p.data(), count);
@@ -176,15 +179,17 @@ void fluxes(const DiscreteSystem& system, const ChunkPotentials& at, std::size_t
 
 void resize(const DiscreteSystem& system, Equations& equations) {
     const std::size_t nodes = system.nodes(), ends = nodes + system.runs.size() - 2;
-    if (equations.newton.blocks() == nodes && equations.n.size() == ends) return;
+    if (equations.newton.blocks() == nodes && equations.runs == system.runs &&
+        equations.ratio_n.empty() != system.fermi_dirac)
+        return;
     equations.newton.resize(nodes);
-    std::copy(system.dielectric.begin(), system.dielectric.end(), equations.newton.dielectric.begin());
+    equations.runs = system.runs;
     equations.left_end.clear();
     for (std::size_t run = 0; run + 1 < system.runs.size(); ++run)
         for (std::size_t cell = system.runs[run]; cell < system.runs[run + 1]; ++cell)
             equations.left_end.push_back(cell + run);
-    for (std::vector<double>* values :
-         {&equations.n, &equations.p, &equations.rate, &equations.rate_by_psi, &equations.rate_by_phi_p})
+    for (std::vector<double>* values : {&equations.n, &equations.p, &equations.rate, &equations.rate_by_psi,
+                                        &equations.rate_by_phi_n, &equations.rate_by_phi_p})
         values->assign(ends, 0);
     for (std::vector<double>* values :
          {&equations.ratio_n, &equations.ratio_p, &equations.log_gamma_n, &equations.log_gamma_p})
@@ -197,7 +202,7 @@ bool sum_up(const DiscreteSystem& system, const State& state, Equations& equatio
     BlockTridiagonal& m = equations.newton;
     const bool degenerate = system.fermi_dirac;
     for (std::vector<double>* values :
-         {&m.potential_by_gap, &m.potential_by_split, &m.hole_by_gap, &m.hole_by_split, &m.source})
+         {&m.potential_by_both, &m.potential_by_minor, &m.hole_by_both, &m.hole_by_minor, &m.source})
         std::fill(values->begin(), values->end(), 0.0);
     const auto half = [&](std::size_t node, std::size_t e, double h, double net) {
         const double n = equations.n[e], p = equations.p[e], rate = h * equations.rate[e];
@@ -206,11 +211,17 @@ bool sum_up(const DiscreteSystem& system, const State& state, Equations& equatio
         m.source[3 * node + 2] += rate;
         const double dn = h * (degenerate ? n * equations.ratio_n[e] : n),
                      dp = h * (degenerate ? p * equations.ratio_p[e] : p);
-        m.potential_by_gap[node] += dn + dp;
-        m.potential_by_split[node] += dp;
-        m.hole_by_gap[node] -= h * equations.rate_by_psi[e];  // phi_n and phi_p together against psi
-        m.hole_by_split[node] += h * equations.rate_by_phi_p[e];
+        const bool holes_lead = m.holes_lead[node];
+        m.potential_by_both[node] += dn + dp;
+        m.potential_by_minor[node] += holes_lead ? dn : dp;
+        m.hole_by_both[node] -= h * equations.rate_by_psi[e];  // both potentials together against psi
+        m.hole_by_minor[node] += h * (holes_lead ? equations.rate_by_phi_n[e] : equations.rate_by_phi_p[e]);
     };
+    for (std::size_t cell = 0; cell < system.cells(); ++cell) {
+        const std::size_t e = equations.left_end[cell];
+        m.holes_lead[cell] = equations.p[e] > equations.n[e];
+        if (cell + 1 == system.cells()) m.holes_lead[cell + 1] = equations.p[e + 1] > equations.n[e + 1];
+    }
     for (std::size_t cell = 0; cell < system.cells(); ++cell) {
         const double h = 0.5 * system.mesh.width(cell);
         half(cell, equations.left_end[cell], h, system.net_left[cell]);
@@ -270,7 +281,7 @@ std::vector<double> rounding_of_balance(const DiscreteSystem& system, const Stat
                 system.dielectric[cell] * psi + h * ((s.n + s.p) * size(node, 0) + std::abs(net));
             const double of_rate =
                 h * (std::abs(rate.value) +
-                     (std::abs(rate.by_psi) + std::abs(rate.by_phi_p)) * (phi_n + phi_p + psi));
+                     (std::abs(rate.by_phi_n) + std::abs(rate.by_phi_p)) * (phi_n + phi_p + psi));
             rounding[3 * node + 1] += electron + of_rate;
             rounding[3 * node + 2] += hole + of_rate;
         };

@@ -16,11 +16,9 @@ struct EndState {
     double n, p, ratio_n, ratio_p, log_gamma_n, log_gamma_p;
 };
 
-/// Net recombination of one half cell [m^-3 s^-1] and its derivatives with respect to psi and phi_p. A common
-/// shift changes nothing, so the one with respect to phi_n is what is left.
+/// Net recombination of one half cell [m^-3 s^-1] and its derivatives with respect to psi, phi_n and phi_p.
 struct HalfRate {
-    double value, by_psi, by_phi_p;
-    double by_phi_n() const { return -(by_psi + by_phi_p); }
+    double value, by_psi, by_phi_n, by_phi_p;
 };
 
 /// Electron and hole flux of a cell [m^-2 s^-1].
@@ -43,18 +41,22 @@ struct Equations {
     CellFluxes flux(std::size_t cell) const { return {newton.electron_flux[cell], newton.hole_flux[cell]}; }
     std::size_t cells() const { return left_end.size(); }
 
+    /// Of the system that this workspace was last sized for.
+    std::vector<std::size_t> runs;
     /// End at the left of each cell; its right one is the next.
     std::vector<std::size_t> left_end;
     /// Per end. The four degeneracy numbers are kept for Fermi-Dirac statistics alone.
     std::vector<double> n, p, ratio_n, ratio_p, log_gamma_n, log_gamma_p;
-    std::vector<double> rate, rate_by_psi, rate_by_phi_p;
+    std::vector<double> rate, rate_by_psi, rate_by_phi_n, rate_by_phi_p;
 
   private:
     EndState end(std::size_t e) const {
         if (ratio_n.empty()) return {n[e], p[e], 1, 1, 0, 0};
         return {n[e], p[e], ratio_n[e], ratio_p[e], log_gamma_n[e], log_gamma_p[e]};
     }
-    HalfRate rate_at(std::size_t e) const { return {rate[e], rate_by_psi[e], rate_by_phi_p[e]}; }
+    HalfRate rate_at(std::size_t e) const {
+        return {rate[e], rate_by_psi[e], rate_by_phi_n[e], rate_by_phi_p[e]};
+    }
 };
 
 /// Fills `equations` for a state.

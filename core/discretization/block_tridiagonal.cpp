@@ -55,48 +55,63 @@ Entries<S> inverse(const Entries<S>& matrix) {
     return result;
 }
 
-// Row of the levels that stands for one unknown: x_0 = z_0, x_1 = z_0 + z_1, x_2 = z_0 + z_1 + z_2.
-void set_row(Block& block, std::size_t row) {
-    for (std::size_t j = 0; j < 3; ++j) block[3 * row + j] = j <= row ? 1 : 0;
+// Row of the levels that stands for one unknown: psi is the first, a major carrier's potential the sum of the
+// first two, a minor one's of all three.
+void set_row(Block& block, std::size_t row, bool holes_lead) {
+    const bool is_minor = row == (holes_lead ? 1 : 2);
+    for (std::size_t j = 0; j < 3; ++j)
+        block[3 * row + j] = j == 0 || (row > 0 && (j == 1 || is_minor)) ? 1 : 0;
 }
 
-/// One cell as a node sees it that lies on its outer side.
+/// One cell as a node sees it that lies on its outer side. Near and far carry the third column of each end.
 template <class S>
 struct Cell {
     S dielectric, electron_shift, electron_near, electron_sum, hole_shift, hole_near, hole_sum;
     Triple<S> flux;
+    S near_holes_lead, far_holes_lead;  // 0 or 1
+
+    S electron_minor() const { return near_holes_lead * electron_near; }
+    S hole_minor() const { return hole_near - near_holes_lead * hole_near; }
     Entries<S> near() const {
-        return {-dielectric, S{},         S{},       -electron_shift, electron_near,
-                S{},         -hole_shift, hole_near, hole_near};
+        return {-dielectric,      S{},         S{},       -electron_shift, electron_near,
+                electron_minor(), -hole_shift, hole_near, hole_minor()};
     }
-    Entries<S> far() const {
-        return {dielectric,
-                S{},
-                S{},
-                electron_shift,
-                electron_sum - electron_near,
-                S{},
-                hole_shift,
-                hole_sum - hole_near,
-                hole_sum - hole_near};
+    Triple<S> far(std::size_t j) const {
+        if (j == 0) return {dielectric, electron_shift, hole_shift};
+        const S n = electron_sum - electron_near, p = hole_sum - hole_near;
+        if (j == 1) return {S{}, n, p};
+        return {S{}, far_holes_lead * n, p - far_holes_lead * p};
     }
-    // near times a vector: Poisson's row has one entry, the electrons' two.
+    // near + far when the same potentials move at both ends.
+    Triple<S> sum(std::size_t j) const {
+        if (j == 0) return {};
+        if (j == 1) return {S{}, electron_sum, hole_sum};
+        return {S{}, far_holes_lead * electron_sum, hole_sum - far_holes_lead * hole_sum};
+    }
     Triple<S> near_times(const Triple<S>& x) const {
-        return {-(dielectric * x[0]), electron_near * x[1] - electron_shift * x[0],
-                hole_near * (x[1] + x[2]) - hole_shift * x[0]};
+        return {-(dielectric * x[0]), electron_near * x[1] + electron_minor() * x[2] - electron_shift * x[0],
+                hole_near * x[1] + hole_minor() * x[2] - hole_shift * x[0]};
     }
-    Triple<S> near_size(const Triple<S>& x) const {
-        return {dielectric * magnitude(x[0]),
-                magnitude(electron_near * x[1]) + magnitude(electron_shift * x[0]),
-                magnitude(hole_near) * (magnitude(x[1]) + magnitude(x[2])) + magnitude(hole_shift * x[0])};
+    Triple<S> near_size(const Triple<S>& size) const {
+        return {dielectric * size[0],
+                magnitude(electron_near) * size[1] + magnitude(electron_minor()) * size[2] +
+                    magnitude(electron_shift) * size[0],
+                magnitude(hole_near) * size[1] + magnitude(hole_minor()) * size[2] +
+                    magnitude(hole_shift) * size[0]};
     }
 };
 
 template <class S>
+Triple<S> sizes(const Triple<S>& x) {
+    return {magnitude(x[0]), magnitude(x[1]), magnitude(x[2])};
+}
+
+// Sizes of the terms of a product with a vector of given sizes: its rounding error is a few units of these.
+template <class S>
 Triple<S> size_of_product(const Entries<S>& a, const Triple<S>& x) {
     Triple<S> y;
     for (std::size_t i = 0; i < 3; ++i)
-        y[i] = magnitude(a[3 * i] * x[0]) + magnitude(a[3 * i + 1] * x[1]) + magnitude(a[3 * i + 2] * x[2]);
+        y[i] = magnitude(a[3 * i]) * x[0] + magnitude(a[3 * i + 1]) * x[1] + magnitude(a[3 * i + 2]) * x[2];
     return y;
 }
 
@@ -115,7 +130,7 @@ struct Carried {
 /// What a node brings with it: own terms by its second and third level, and sources.
 template <class S, std::size_t sides>
 struct Node {
-    S potential_by_gap, potential_by_split, hole_by_gap, hole_by_split;
+    S potential_by_both, potential_by_minor, hole_by_both, hole_by_minor;
     std::array<Triple<S>, sides> source;
 };
 
@@ -124,45 +139,63 @@ struct Node {
 template <class S, std::size_t sides>
 Entries<S> pass(const Cell<S>& cell, Node<S, sides>& node, Carried<S, sides>& carried) {
     Entries<S> m = carried.admittance;
-    m[1] -= node.potential_by_gap;
-    m[2] -= node.potential_by_split;
-    m[4] += node.hole_by_gap;
-    m[5] += node.hole_by_split;
-    m[7] -= node.hole_by_gap;
-    m[8] -= node.hole_by_split;
+    m[1] -= node.potential_by_both;
+    m[2] -= node.potential_by_minor;
+    m[4] += node.hole_by_both;
+    m[5] += node.hole_by_minor;
+    m[7] -= node.hole_by_both;
+    m[8] -= node.hole_by_minor;
     Entries<S> b = cell.near();
     for (std::size_t e = 0; e < 9; ++e) b[e] -= m[e];
     const Entries<S> i = inverse(b);
-    const Triple<S> far[3] = {{cell.dielectric, cell.electron_shift, cell.hole_shift},
-                              {S{}, cell.electron_sum - cell.electron_near, cell.hole_sum - cell.hole_near},
-                              {S{}, S{}, cell.hole_sum - cell.hole_near}};
-    const Triple<S> sum[3] = {{}, {S{}, cell.electron_sum, cell.hole_sum}, {S{}, S{}, cell.hole_sum}};
+    // Where the carriers change roles from this node to the next, "the minor one alone" there is "the major
+    // one alone" here: (0, 1, -1) in place of (0, 0, 1).
+    const S changes = magnitude(cell.near_holes_lead - cell.far_holes_lead);
     Entries<S> coupling;
     for (std::size_t j = 0; j < 3; ++j) {
-        Triple<S> excess = column(m, j);
-        for (std::size_t r = 0; r < 3; ++r) excess[r] -= sum[j][r];
-        const Triple<S> slip = product(i, excess), whole = product(i, far[j]);
-        const S most = larger(larger(magnitude(slip[0]), magnitude(slip[1])), magnitude(slip[2]));
-        Triple<S> c = slip;
-        c[j] += 1.0;
-        for (std::size_t r = 0; r < 3; ++r) c[r] = chosen(most, S{} + 0.5, c[r], -whole[r]);
-        const Triple<S> outside = product(m, c), outside_size = size_of_product(m, c);
-        const Triple<S> inside = cell.near_times(slip), inside_size = cell.near_size(slip);
+        Triple<S> same{}, excess, excess_size;
+        same[j] += 1.0;
+        if (j == 2) {
+            same[1] = changes;
+            same[2] = 1.0 - 2.0 * changes;
+        }
+        const Triple<S> sum = cell.sum(j), far = cell.far(j);
+        for (std::size_t r = 0; r < 3; ++r) {
+            if (j < 2) {
+                excess[r] = m[3 * r + j] - sum[r];
+                excess_size[r] = magnitude(excess[r]);
+            } else {
+                const S of_major = same[1] * m[3 * r + 1], of_minor = same[2] * m[3 * r + 2];
+                excess[r] = of_major + of_minor - sum[r];
+                excess_size[r] = changes * magnitude(of_major) + magnitude(excess[r]);
+            }
+        }
+        const Triple<S> slip = product(i, excess), slip_size = size_of_product(i, excess_size);
+        const Triple<S> whole = product(i, far), whole_size = size_of_product(i, sizes(far));
+        Triple<S> c, c_size;
+        for (std::size_t r = 0; r < 3; ++r) {
+            const S own_size = slip_size[r] + magnitude(same[r]);
+            c[r] = chosen(own_size, whole_size[r], slip[r] + same[r], -whole[r]);
+            c_size[r] = chosen(own_size, whole_size[r], own_size, whole_size[r]);
+        }
+        const Triple<S> outside = product(m, c), outside_size = size_of_product(m, c_size);
+        const Triple<S> inside = cell.near_times(slip), inside_size = cell.near_size(slip_size);
         for (std::size_t r = 0; r < 3; ++r) {
             coupling[3 * r + j] = c[r];
-            carried.admittance[3 * r + j] = chosen(outside_size[r], inside_size[r] + magnitude(sum[j][r]),
-                                                   outside[r], inside[r] + sum[j][r]);
+            carried.admittance[3 * r + j] =
+                chosen(outside_size[r], inside_size[r] + magnitude(sum[r]), outside[r], inside[r] + sum[r]);
         }
     }
     for (std::size_t s = 0; s < sides; ++s) {
-        Triple<S> c, drive;
+        Triple<S> c, drive, drive_size;
         for (std::size_t r = 0; r < 3; ++r) {
             c[r] = carried.flux[s][r] - node.source[s][r];
             drive[r] = s == 0 ? c[r] - cell.flux[r] : c[r];
+            drive_size[r] = s == 0 ? magnitude(c[r]) + magnitude(cell.flux[r]) : magnitude(c[r]);
         }
-        const Triple<S> y = product(i, drive);
-        const Triple<S> outside = product(m, y), outside_size = size_of_product(m, y);
-        const Triple<S> inside = cell.near_times(y), inside_size = cell.near_size(y);
+        const Triple<S> y = product(i, drive), y_size = size_of_product(i, drive_size);
+        const Triple<S> outside = product(m, y), outside_size = size_of_product(m, y_size);
+        const Triple<S> inside = cell.near_times(y), inside_size = cell.near_size(y_size);
         for (std::size_t r = 0; r < 3; ++r) {
             const S flux = s == 0 ? cell.flux[r] : S{};
             carried.flux[s][r] = chosen(outside_size[r] + magnitude(c[r]), inside_size[r] + magnitude(flux),
@@ -177,13 +210,14 @@ Entries<S> pass(const Cell<S>& cell, Node<S, sides>& node, Carried<S, sides>& ca
 template <std::size_t sides>
 Block begin(const Cell<double>& cell, const Block& own, const std::array<bool, 3>& is_set,
             Carried<double, sides>& carried, std::array<Triple<double>, sides>& source) {
-    Block b = cell.near();
-    const Block far = cell.far();
+    Block b = cell.near(), far;
+    for (std::size_t j = 0; j < 3; ++j)
+        for (std::size_t r = 0; r < 3; ++r) far[3 * r + j] = cell.far(j)[r];
     for (std::size_t e = 0; e < 9; ++e) b[e] += own[e];
     Block seen = far;
     for (std::size_t r = 0; r < 3; ++r)
         if (is_set[r]) {
-            set_row(b, r);
+            set_row(b, r, cell.near_holes_lead > 0.5);
             for (std::size_t j = 0; j < 3; ++j) seen[3 * r + j] = 0;
         }
     const Block i = inverse(b);
@@ -192,8 +226,8 @@ Block begin(const Cell<double>& cell, const Block& own, const std::array<bool, 3
     // A row that is not set has the two forms of pass(), with M = -own.
     carried.admittance = product(cell.near(), coupling);
     for (std::size_t j = 0; j < 3; ++j) {
-        const Triple<double> c = column(coupling, j), inside_size = cell.near_size(c),
-                             outside = product(own, c), outside_size = size_of_product(own, c);
+        const Triple<double> c = column(coupling, j), inside_size = cell.near_size(sizes(c)),
+                             outside = product(own, c), outside_size = size_of_product(own, sizes(c));
         for (std::size_t r = 0; r < 3; ++r) {
             double& entry = carried.admittance[3 * r + j];
             entry = !is_set[r] && outside_size[r] < inside_size[r] + std::abs(far[3 * r + j])
@@ -221,21 +255,32 @@ Block begin(const Cell<double>& cell, const Block& own, const std::array<bool, 3
 }
 
 Block own_block(const BlockTridiagonal& matrix, std::size_t node) {
-    const double p1 = matrix.potential_by_gap[node], p2 = matrix.potential_by_split[node],
-                 h1 = matrix.hole_by_gap[node], h2 = matrix.hole_by_split[node];
+    const double p1 = matrix.potential_by_both[node], p2 = matrix.potential_by_minor[node],
+                 h1 = matrix.hole_by_both[node], h2 = matrix.hole_by_minor[node];
     Block own{0, p1, p2, 0, -h1, -h2, 0, h1, h2};
-    for (std::size_t e = 0; e < 9; ++e) {
-        if (node == 0) own[e] += matrix.first_own[e];
-        if (node + 1 == matrix.blocks()) own[e] += matrix.last_own[e];
-    }
+    const bool holes_lead = matrix.holes_lead[node];
+    const auto add = [&](const std::array<double, 2>& further) {
+        for (std::size_t j = 0; j < 3; ++j) {
+            own[3 + j] += j < 2 || holes_lead ? further[0] : 0;
+            own[6 + j] += j < 2 || !holes_lead ? further[1] : 0;
+        }
+    };
+    if (node == 0) add(matrix.first_own);
+    if (node + 1 == matrix.blocks()) add(matrix.last_own);
     return own;
 }
 
 Cell<double> cell_from_top(const BlockTridiagonal& m, std::size_t cell) {
-    return {m.dielectric[cell],    m.electron_shift[cell],
-            m.electron_left[cell], m.electron_sum[cell],
-            m.hole_shift[cell],    m.hole_left[cell],
-            m.hole_sum[cell],      {m.potential_flux[cell], m.electron_flux[cell], m.hole_flux[cell]}};
+    return {m.dielectric[cell],
+            m.electron_shift[cell],
+            m.electron_left[cell],
+            m.electron_sum[cell],
+            m.hole_shift[cell],
+            m.hole_left[cell],
+            m.hole_sum[cell],
+            {m.potential_flux[cell], m.electron_flux[cell], m.hole_flux[cell]},
+            static_cast<double>(m.holes_lead[cell]),
+            static_cast<double>(m.holes_lead[cell + 1])};
 }
 
 // Seen from below the flux of a cell counts the other way and its ends change places.
@@ -247,7 +292,9 @@ Cell<double> cell_from_bottom(const BlockTridiagonal& m, std::size_t cell) {
             m.hole_shift[cell],
             m.hole_left[cell] - m.hole_sum[cell],
             -m.hole_sum[cell],
-            {-m.potential_flux[cell], -m.electron_flux[cell], -m.hole_flux[cell]}};
+            {-m.potential_flux[cell], -m.electron_flux[cell], -m.hole_flux[cell]},
+            static_cast<double>(m.holes_lead[cell + 1]),
+            static_cast<double>(m.holes_lead[cell])};
 }
 
 Cell<LanePair> beside(const Cell<double>& a, const Cell<double>& b) {
@@ -258,7 +305,9 @@ Cell<LanePair> beside(const Cell<double>& a, const Cell<double>& b) {
             pair(a.hole_shift, b.hole_shift),
             pair(a.hole_near, b.hole_near),
             pair(a.hole_sum, b.hole_sum),
-            {pair(a.flux[0], b.flux[0]), pair(a.flux[1], b.flux[1]), pair(a.flux[2], b.flux[2])}};
+            {pair(a.flux[0], b.flux[0]), pair(a.flux[1], b.flux[1]), pair(a.flux[2], b.flux[2])},
+            pair(a.near_holes_lead, b.near_holes_lead),
+            pair(a.far_holes_lead, b.far_holes_lead)};
 }
 
 template <std::size_t sides>
@@ -293,10 +342,10 @@ void pass_in_pairs(const BlockTridiagonal& m, std::size_t pairs, std::vector<dou
         for (std::size_t r = 0; r < 3; ++r) carried.flux[s][r] = pair(end[0].flux[s][r], end[1].flux[s][r]);
     for (std::size_t k = 1; k < pairs; ++k) {
         const std::size_t a = k, b = last - k;
-        Node<LanePair, sides> node{pair(m.potential_by_gap[a], m.potential_by_gap[b]),
-                                   pair(m.potential_by_split[a], m.potential_by_split[b]),
-                                   pair(m.hole_by_gap[a], m.hole_by_gap[b]),
-                                   pair(m.hole_by_split[a], m.hole_by_split[b]),
+        Node<LanePair, sides> node{pair(m.potential_by_both[a], m.potential_by_both[b]),
+                                   pair(m.potential_by_minor[a], m.potential_by_minor[b]),
+                                   pair(m.hole_by_both[a], m.hole_by_both[b]),
+                                   pair(m.hole_by_minor[a], m.hole_by_minor[b]),
                                    {}};
         for (std::size_t r = 0; r < 3; ++r)
             node.source[0][r] = pair(m.source[3 * a + r], m.source[3 * b + r]);
@@ -326,7 +375,7 @@ void join(const BlockTridiagonal& m, std::size_t node, const std::array<Carried<
     const bool is_last = node + 1 == m.blocks();
     for (std::size_t r = 0; r < 3; ++r) {
         const bool is_set = is_last && m.last_is_set[r];
-        if (is_set) set_row(b, r);
+        if (is_set) set_row(b, r, m.holes_lead[node]);
         for (std::size_t s = 0; s < sides; ++s)
             c[s][r] = (is_set ? 0 : end[0].flux[s][r] + end[1].flux[s][r]) - c[s][r];
     }
@@ -357,8 +406,8 @@ bool solve_all(const BlockTridiagonal& m, std::vector<double>& storage, const St
     if (pairs > 1) pass_in_pairs(m, pairs, storage, end, x);
     if (middle > pairs && middle > 1) {  // the one more above the middle
         const std::size_t a = middle - 1;
-        Node<double, sides> node{m.potential_by_gap[a], m.potential_by_split[a], m.hole_by_gap[a],
-                                 m.hole_by_split[a], source_of<sides>(m, a, pull)};
+        Node<double, sides> node{m.potential_by_both[a], m.potential_by_minor[a], m.hole_by_both[a],
+                                 m.hole_by_minor[a], source_of<sides>(m, a, pull)};
         keep_coupling(a, 0, pass(cell_from_top(m, a), node, end[0]));
         keep(x, a, node.source);
     }
@@ -376,7 +425,13 @@ bool solve_all(const BlockTridiagonal& m, std::vector<double>& storage, const St
         back(k, k + 1, k, 0);
         back(last - k, last - k - 1, k, 1);
     }
-    // A singular block leaves a number that is not finite.
+    // From levels to gaps; a singular block leaves a number that is not finite.
+    for (std::size_t s = 0; s < sides; ++s)
+        for (std::size_t node = 0; node < nodes; ++node) {
+            double *major = &x[s][3 * node + 1], *minor = &x[s][3 * node + 2];
+            *minor += *major;
+            if (m.holes_lead[node]) std::swap(*major, *minor);
+        }
     double check = 0;
     for (std::size_t s = 0; s < sides; ++s)
         for (std::size_t e = 0; e < 3 * nodes; ++e) check += 0 * x[s][e];
@@ -390,9 +445,11 @@ void BlockTridiagonal::resize(std::size_t nodes) {
          {&dielectric, &electron_shift, &electron_left, &electron_sum, &hole_shift, &hole_left, &hole_sum,
           &potential_flux, &electron_flux, &hole_flux})
         values->assign(nodes - 1, 0.0);
-    for (std::vector<double>* values : {&potential_by_gap, &potential_by_split, &hole_by_gap, &hole_by_split})
+    for (std::vector<double>* values :
+         {&potential_by_both, &potential_by_minor, &hole_by_both, &hole_by_minor})
         values->assign(nodes, 0.0);
     source.assign(3 * nodes, 0.0);
+    holes_lead.assign(nodes, 0);
     coupling_.assign(18 * (nodes / 2 + 1), 0.0);
     first_own = last_own = {};
     first_is_set = last_is_set = {};
@@ -414,15 +471,20 @@ double BlockTridiagonal::balance(std::size_t node, std::size_t row) const {
 
 namespace {
 
-// A block whose columns are levels, by (psi, phi_n, phi_p): dz/dx = (1, 0, 0; -1, 1, 0; 0, -1, 1).
-Block by_potentials(const Block& levels) {
-    Block block;
-    for (std::size_t r = 0; r < 3; ++r) {
-        block[3 * r] = levels[3 * r] - levels[3 * r + 1];
-        block[3 * r + 1] = levels[3 * r + 1] - levels[3 * r + 2];
-        block[3 * r + 2] = levels[3 * r + 2];
-    }
-    return block;
+// Blocks by (psi, phi_n, phi_p): a cell's ends, from its derivatives by shift and at fixed psi.
+Block by_potentials(double psi, double electron_shift, double electron, double hole_shift, double hole) {
+    return {psi, 0, 0, electron_shift - electron, electron, 0, hole_shift - hole, 0, hole};
+}
+
+Block at_left(const BlockTridiagonal& m, std::size_t cell) {
+    return by_potentials(-m.dielectric[cell], -m.electron_shift[cell], m.electron_left[cell],
+                         -m.hole_shift[cell], m.hole_left[cell]);
+}
+
+Block at_right(const BlockTridiagonal& m, std::size_t cell) {
+    return by_potentials(m.dielectric[cell], m.electron_shift[cell],
+                         m.electron_sum[cell] - m.electron_left[cell], m.hole_shift[cell],
+                         m.hole_sum[cell] - m.hole_left[cell]);
 }
 
 }  // namespace
@@ -430,7 +492,7 @@ Block by_potentials(const Block& levels) {
 Block BlockTridiagonal::lower_block(std::size_t node) const {
     Block block{};
     if (node == 0) return block;
-    block = by_potentials(cell_from_top(*this, node - 1).near());
+    block = at_left(*this, node - 1);
     for (std::size_t r = 0; r < 3; ++r)
         for (std::size_t j = 0; j < 3; ++j)
             block[3 * r + j] = node + 1 == blocks() && last_is_set[r] ? 0 : -block[3 * r + j];
@@ -440,7 +502,7 @@ Block BlockTridiagonal::lower_block(std::size_t node) const {
 Block BlockTridiagonal::upper_block(std::size_t node) const {
     Block block{};
     if (node + 1 == blocks()) return block;
-    block = by_potentials(cell_from_top(*this, node).far());
+    block = at_right(*this, node);
     for (std::size_t r = 0; r < 3; ++r)
         if (node == 0 && first_is_set[r])
             for (std::size_t j = 0; j < 3; ++j) block[3 * r + j] = 0;
@@ -448,18 +510,26 @@ Block BlockTridiagonal::upper_block(std::size_t node) const {
 }
 
 Block BlockTridiagonal::diagonal_block(std::size_t node) const {
-    Block block = own_block(*this, node);
+    const Block levels = own_block(*this, node);
+    Block block;
+    for (std::size_t r = 0; r < 3; ++r) {
+        const double both = levels[3 * r + 1], minor = levels[3 * r + 2], major = both - minor;
+        block[3 * r] = levels[3 * r] - both;
+        block[3 * r + 1] = holes_lead[node] ? minor : major;
+        block[3 * r + 2] = holes_lead[node] ? major : minor;
+    }
     if (node + 1 < blocks()) {
-        const Block near = cell_from_top(*this, node).near();
+        const Block near = at_left(*this, node);
         for (std::size_t e = 0; e < 9; ++e) block[e] += near[e];
     }
     if (node > 0) {
-        const Block far = cell_from_top(*this, node - 1).far();
+        const Block far = at_right(*this, node - 1);
         for (std::size_t e = 0; e < 9; ++e) block[e] -= far[e];
     }
     for (std::size_t r = 0; r < 3; ++r)
-        if ((node == 0 && first_is_set[r]) || (node + 1 == blocks() && last_is_set[r])) set_row(block, r);
-    return by_potentials(block);
+        if ((node == 0 && first_is_set[r]) || (node + 1 == blocks() && last_is_set[r]))
+            for (std::size_t j = 0; j < 3; ++j) block[3 * r + j] = r == j ? 1 : 0;
+    return block;
 }
 
 }  // namespace bandwright

@@ -18,9 +18,11 @@ using Block = std::array<double, 9>;
 ///     T_k - T_(k-1) + (source of node k) + (own terms of node k) z_k = 0,
 ///     T_k = (present flux of cell k) + near_k z_k + far_k z_(k+1).
 ///
-/// The unknowns are changes of *levels*: z = (psi, phi_n - psi, phi_p - phi_n). A common shift of all three
-/// potentials changes no flux and no rate, so the first column of a cell is the same at both ends but for its
-/// sign; a rate depends on the third level, and no conductance has to be found as a difference of others.
+/// Inside, the unknowns of a node are changes of *levels*: z = (psi, phi_major - psi, phi_minor - phi_major),
+/// major and minor being the carriers with the higher and the lower density there. A common shift of all
+/// three potentials changes no flux and no rate, so the first column of a cell is the same at both ends but
+/// for its sign; a rate depends on the third level, so no conductance has to be found as a difference of
+/// others; and a minority carrier far from its solution does not disturb the majority's level.
 ///
 /// Elimination runs from both ends to the middle, two nodes at a time in the two lanes of a vector register.
 /// It carries what everything outside lets through: T = Y z_k + f into node k. With M = Y - own terms,
@@ -37,7 +39,7 @@ class BlockTridiagonal {
   public:
     /// Sets the number of nodes (at least 2); contents become zero, no unknown is set.
     void resize(std::size_t nodes);
-    std::size_t blocks() const { return potential_by_gap.size(); }
+    std::size_t blocks() const { return potential_by_both.size(); }
 
     /// Derivatives of the fluxes of a cell, size nodes - 1 each. Poisson: dielectric * (psi_right -
     /// psi_left). Carriers: by the first level of the right node (of the left node: the same, negative), by
@@ -51,11 +53,14 @@ class BlockTridiagonal {
     /// Sources of a node, rows as the unknowns, size 3 nodes; of a row that sets its unknown: the unknown
     /// minus what it is set to.
     std::vector<double> source;
-    /// Own terms of a node by its second and third level, size nodes each: of Poisson's row, and of the hole
-    /// row (the electron row has the same with the other sign).
-    std::vector<double> potential_by_gap, potential_by_split, hole_by_gap, hole_by_split;
-    /// Further own terms of the first and the last node, and rows there that set their unknown.
-    Block first_own{}, last_own{};
+    /// Whether holes outnumber electrons at a node, size nodes.
+    std::vector<char> holes_lead;
+    /// Own terms of a node, size nodes each: of Poisson's row, and of the hole row (the electron row has the
+    /// same with the other sign), by both quasi-Fermi potentials together and by the minor carrier's alone.
+    std::vector<double> potential_by_both, potential_by_minor, hole_by_both, hole_by_minor;
+    /// Further own terms at the first and the last node, of the electron row by phi_n and of the hole row by
+    /// phi_p; and rows there that set their unknown.
+    std::array<double, 2> first_own{}, last_own{};
     std::array<bool, 3> first_is_set{}, last_is_set{};
 
     /// Step of all levels to the solution, size 3 blocks(). False when a block is singular (the numbers are
@@ -77,11 +82,11 @@ class BlockTridiagonal {
     std::vector<double> coupling_;
 };
 
-/// Potentials from levels, in place: (z0, z0 + z1, z0 + z1 + z2) for every node.
-inline void potentials_from_levels(std::span<double> levels) {
-    for (std::size_t k = 0; k + 2 < levels.size(); k += 3) {
-        levels[k + 1] += levels[k];
-        levels[k + 2] += levels[k + 1];
+/// (psi, phi_n, phi_p) from (psi, phi_n - psi, phi_p - psi), in place.
+inline void potentials_from_gaps(std::span<double> step) {
+    for (std::size_t k = 0; k + 2 < step.size(); k += 3) {
+        step[k + 1] += step[k];
+        step[k + 2] += step[k];
     }
 }
 

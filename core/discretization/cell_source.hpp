@@ -15,9 +15,9 @@ struct SourceState {
     double gamma_n = 1, gamma_p = 1, ratio_n = 1, ratio_p = 1;
 };
 
-/// Rate [m^-3 s^-1] and derivatives with respect to psi and phi_p.
+/// Rate [m^-3 s^-1] and derivatives with respect to psi, phi_n and phi_p; their sum is zero.
 struct SourceRate {
-    double value, by_psi, by_phi_p;
+    double value, by_psi, by_phi_n, by_phi_p;
 };
 
 /// Shockley-Read-Hall, Auger and radiative recombination at one end of a cell [m^-3 s^-1].
@@ -37,6 +37,7 @@ inline SourceRate half_rate(const EndCoefficients& end, const SourceState& s) {
     const double product = reverse ? equilibrium * s.change : -np * s.change;
     // Logarithmic derivatives: n grows with psi - phi_n at ratio_n, p with phi_p - psi at ratio_p.
     const double product_by_psi = product * (s.ratio_n - s.ratio_p);
+    const double product_by_phi_n = -product * s.ratio_n - equilibrium;
     const double product_by_phi_p = product * s.ratio_p + equilibrium;
     const double dn = s.n * s.ratio_n, dp = s.p * s.ratio_p;
 
@@ -47,7 +48,7 @@ inline SourceRate half_rate(const EndCoefficients& end, const SourceState& s) {
                  by_p = end.auger_p * dp - end.srh * inverse * inverse * end.tau_n * (dp + dp1);
     const double factor = end.auger_n * s.n + end.auger_p * s.p + end.radiative + end.srh * inverse;
     return {product * factor, product_by_psi * factor + product * (by_n - by_p),
-            product_by_phi_p * factor + product * by_p};
+            product_by_phi_n * factor - product * by_n, product_by_phi_p * factor + product * by_p};
 }
 
 }  // namespace bandwright

@@ -19,7 +19,7 @@ inline void apply_contact(const ContactCoefficients& contact, const State& state
                           bool is_top, Equations& equations) {
     BlockTridiagonal& matrix = equations.newton;
     double* source = &matrix.source[3 * node];
-    Block& own = is_top ? matrix.first_own : matrix.last_own;
+    std::array<double, 2>& own = is_top ? matrix.first_own : matrix.last_own;
     own = {};
     std::array<bool, 3>& is_set = is_top ? matrix.first_is_set : matrix.last_is_set;
     const double voltage = is_top ? state.contact_voltage : 0;
@@ -39,7 +39,7 @@ inline void apply_contact(const ContactCoefficients& contact, const State& state
         const double excess = n0 * std::expm1(std::fmin(voltage - state.phi_n(node), 600.0));
         const double speed = *contact.electron_velocity;
         source[1] -= speed * excess;
-        own[3] = own[4] = speed * (n0 + excess);  // phi_n is the sum of the first two levels
+        own[0] = speed * (n0 + excess);
         by_voltage(1, -speed * (n0 + excess));
     } else {
         set(1, state.phi_n(node), voltage);
@@ -49,7 +49,7 @@ inline void apply_contact(const ContactCoefficients& contact, const State& state
         const double excess = p0 * std::expm1(std::fmin(state.phi_p(node) - voltage, 600.0));
         const double speed = *contact.hole_velocity;
         source[2] += speed * excess;
-        own[6] = own[7] = own[8] = speed * (p0 + excess);
+        own[1] = speed * (p0 + excess);
         by_voltage(2, -speed * (p0 + excess));
     } else {
         set(2, state.phi_p(node), voltage);

@@ -38,17 +38,16 @@ double terminal_derivative(const DiscreteSystem& system, const Equations& equati
                            const TerminalCurrent& current, std::span<const double> change) {
     const std::size_t a = current.electron_cell, b = current.hole_cell;
     const BlockTridiagonal& m = equations.newton;
-    const auto level = [&](std::size_t node, std::size_t k) { return change[3 * node + k]; };
-    const double electrons = m.electron_shift[a] * (level(a + 1, 0) - level(a, 0)) +
-                             m.electron_left[a] * (level(a, 1) - level(a + 1, 1)) +
-                             m.electron_sum[a] * level(a + 1, 1);
-    const double holes = m.hole_shift[b] * (level(b + 1, 0) - level(b, 0)) +
-                         m.hole_left[b] * (level(b, 1) + level(b, 2) - level(b + 1, 1) - level(b + 1, 2)) +
-                         m.hole_sum[b] * (level(b + 1, 1) + level(b + 1, 2));
+    const auto gap = [&](std::size_t node, std::size_t k) { return change[3 * node + k]; };
+    const double electrons = m.electron_shift[a] * (gap(a + 1, 0) - gap(a, 0)) +
+                             m.electron_left[a] * (gap(a, 1) - gap(a + 1, 1)) +
+                             m.electron_sum[a] * gap(a + 1, 1);
+    const double holes = m.hole_shift[b] * (gap(b + 1, 0) - gap(b, 0)) +
+                         m.hole_left[b] * (gap(b, 2) - gap(b + 1, 2)) + m.hole_sum[b] * gap(b + 1, 2);
     double integral = 0;
     for (std::size_t node = std::min(a, b) + 1; node <= std::max(a, b); ++node) {
         const auto half = [&](const HalfRate& rate) {
-            return -rate.by_psi * level(node, 1) + rate.by_phi_p * level(node, 2);
+            return rate.by_phi_n * gap(node, 1) + rate.by_phi_p * gap(node, 2);
         };
         integral += 0.5 * (system.mesh.width(node - 1) * half(equations.rate_right(node - 1)) +
                            system.mesh.width(node) * half(equations.rate_left(node)));

@@ -29,7 +29,7 @@ struct TerminalCurrent {
 TerminalCurrent terminal_current(const DiscreteSystem& system, const State& state,
                                  const Equations& equations);
 
-/// Derivative of the flux along a change of the levels of BlockTridiagonal (size 3 nodes) [m^-2 s^-1].
+/// Derivative of the flux along a change of psi, phi_n - psi, phi_p - psi (size 3 nodes) [m^-2 s^-1].
 double terminal_derivative(const DiscreteSystem& system, const Equations& equations,
                            const TerminalCurrent& current, std::span<const double> change);
 
