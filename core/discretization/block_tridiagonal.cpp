@@ -120,11 +120,14 @@ Triple<S> column(const Entries<S>& a, std::size_t j) {
     return {a[j], a[3 + j], a[6 + j]};
 }
 
-/// What elimination carries inward.
+/// What elimination carries inward: three rows, and beside them the sum of the second and the third (the
+/// total current), kept apart because recombination cancels in it.
 template <class S, std::size_t sides>
 struct Carried {
     Entries<S> admittance;
+    Triple<S> total_admittance;
     std::array<Triple<S>, sides> flux;
+    std::array<S, sides> total_flux;
 };
 
 /// What a node brings with it: own terms by its second and third level, and sources.
@@ -134,42 +137,78 @@ struct Node {
     std::array<Triple<S>, sides> source;
 };
 
+template <class S>
+S dot(const Triple<S>& a, const Triple<S>& b) {
+    return a[0] * b[0] + a[1] * b[1] + a[2] * b[2];
+}
+
+template <class S>
+S largest(const S& a, const S& b, const S& c) {
+    return larger(larger(magnitude(a), magnitude(b)), magnitude(c));
+}
+
+// Puts the row of the total in the hole row's place where recombination rules: there the electron and the
+// hole row say the same but for their sign. Returns 1 where it did, 0 elsewhere.
+template <class S>
+S use_total(Entries<S>& b, const Triple<S>& total) {
+    constexpr double much_smaller = 0.1;
+    const S of_carriers = larger(largest(b[3], b[4], b[5]), largest(b[6], b[7], b[8]));
+    const S of_total = largest(total[0], total[1], total[2]);
+    const S used = chosen(of_total, much_smaller * of_carriers, S{} + 1.0, S{});
+    for (std::size_t j = 0; j < 3; ++j) b[6 + j] = chosen(used, S{} + 0.5, b[6 + j], total[j]);
+    return used;
+}
+
 // Takes a node and the cell on its inner side: `carried` becomes that of the next node, `source` becomes y.
 // Returns C. The second of two sides has no present flux.
 template <class S, std::size_t sides>
 Entries<S> pass(const Cell<S>& cell, Node<S, sides>& node, Carried<S, sides>& carried) {
     Entries<S> m = carried.admittance;
+    const Triple<S> total = carried.total_admittance;
     m[1] -= node.potential_by_both;
     m[2] -= node.potential_by_minor;
     m[4] += node.hole_by_both;
     m[5] += node.hole_by_minor;
     m[7] -= node.hole_by_both;
     m[8] -= node.hole_by_minor;
-    Entries<S> b = cell.near();
-    for (std::size_t e = 0; e < 9; ++e) b[e] -= m[e];
+    const Entries<S> near = cell.near();
+    Entries<S> b;
+    for (std::size_t e = 0; e < 9; ++e) b[e] = near[e] - m[e];
+    const Triple<S> near_total{near[3] + near[6], near[4] + near[7], near[5] + near[8]};
+    const S used =
+        use_total(b, Triple<S>{near_total[0] - total[0], near_total[1] - total[1], near_total[2] - total[2]});
+    const S half = S{} + 0.5;
     const Entries<S> i = inverse(b);
     // Where the carriers change roles from this node to the next, "the minor one alone" there is "the major
     // one alone" here: (0, 1, -1) in place of (0, 0, 1).
     const S changes = magnitude(cell.near_holes_lead - cell.far_holes_lead);
     Entries<S> coupling;
     for (std::size_t j = 0; j < 3; ++j) {
-        Triple<S> same{}, excess, excess_size;
+        Triple<S> same{};
         same[j] += 1.0;
         if (j == 2) {
             same[1] = changes;
             same[2] = 1.0 - 2.0 * changes;
         }
-        const Triple<S> sum = cell.sum(j), far = cell.far(j);
-        for (std::size_t r = 0; r < 3; ++r) {
+        const Triple<S> sum = cell.sum(j);
+        Triple<S> far = cell.far(j), excess, excess_size;
+        const S sum_total = sum[1] + sum[2];
+        const auto find_excess = [&](std::size_t r, const S* row, const S& of_cell) {
             if (j < 2) {
-                excess[r] = m[3 * r + j] - sum[r];
+                excess[r] = row[j] - of_cell;
                 excess_size[r] = magnitude(excess[r]);
             } else {
-                const S of_major = same[1] * m[3 * r + 1], of_minor = same[2] * m[3 * r + 2];
-                excess[r] = of_major + of_minor - sum[r];
-                excess_size[r] = changes * magnitude(of_major) + magnitude(excess[r]);
+                const S of_major = same[1] * row[1], of_minor = same[2] * row[2];
+                excess[r] = of_major + of_minor - of_cell;
+                excess_size[r] = magnitude(of_major) + magnitude(excess[r]);
             }
-        }
+        };
+        for (std::size_t r = 0; r < 3; ++r) find_excess(r, &m[3 * r], sum[r]);
+        const S excess_of_holes = excess[2], size_of_holes = excess_size[2];
+        find_excess(2, total.data(), sum_total);
+        excess[2] = chosen(used, half, excess_of_holes, excess[2]);
+        excess_size[2] = chosen(used, half, size_of_holes, excess_size[2]);
+        far[2] = chosen(used, half, far[2], far[1] + far[2]);
         const Triple<S> slip = product(i, excess), slip_size = size_of_product(i, excess_size);
         const Triple<S> whole = product(i, far), whole_size = size_of_product(i, sizes(far));
         Triple<S> c, c_size;
@@ -177,30 +216,41 @@ Entries<S> pass(const Cell<S>& cell, Node<S, sides>& node, Carried<S, sides>& ca
             const S own_size = slip_size[r] + magnitude(same[r]);
             c[r] = chosen(own_size, whole_size[r], slip[r] + same[r], -whole[r]);
             c_size[r] = chosen(own_size, whole_size[r], own_size, whole_size[r]);
+            coupling[3 * r + j] = c[r];
         }
         const Triple<S> outside = product(m, c), outside_size = size_of_product(m, c_size);
         const Triple<S> inside = cell.near_times(slip), inside_size = cell.near_size(slip_size);
-        for (std::size_t r = 0; r < 3; ++r) {
-            coupling[3 * r + j] = c[r];
+        for (std::size_t r = 0; r < 3; ++r)
             carried.admittance[3 * r + j] =
                 chosen(outside_size[r], inside_size[r] + magnitude(sum[r]), outside[r], inside[r] + sum[r]);
-        }
+        carried.total_admittance[j] =
+            chosen(dot(sizes(total), c_size),
+                   inside_size[1] + inside_size[2] + magnitude(sum[1]) + magnitude(sum[2]), dot(total, c),
+                   inside[1] + inside[2] + sum_total);
     }
     for (std::size_t s = 0; s < sides; ++s) {
+        const Triple<S> flux = s == 0 ? cell.flux : Triple<S>{};
         Triple<S> c, drive, drive_size;
         for (std::size_t r = 0; r < 3; ++r) {
             c[r] = carried.flux[s][r] - node.source[s][r];
-            drive[r] = s == 0 ? c[r] - cell.flux[r] : c[r];
-            drive_size[r] = s == 0 ? magnitude(c[r]) + magnitude(cell.flux[r]) : magnitude(c[r]);
+            drive[r] = c[r] - flux[r];
+            drive_size[r] = magnitude(c[r]) + magnitude(flux[r]);
         }
+        const S c_total = carried.total_flux[s] - (node.source[s][1] + node.source[s][2]);
+        drive[2] = chosen(used, half, drive[2], c_total - (flux[1] + flux[2]));
+        drive_size[2] =
+            chosen(used, half, drive_size[2], magnitude(c_total) + magnitude(flux[1]) + magnitude(flux[2]));
         const Triple<S> y = product(i, drive), y_size = size_of_product(i, drive_size);
         const Triple<S> outside = product(m, y), outside_size = size_of_product(m, y_size);
         const Triple<S> inside = cell.near_times(y), inside_size = cell.near_size(y_size);
-        for (std::size_t r = 0; r < 3; ++r) {
-            const S flux = s == 0 ? cell.flux[r] : S{};
-            carried.flux[s][r] = chosen(outside_size[r] + magnitude(c[r]), inside_size[r] + magnitude(flux),
-                                        c[r] + outside[r], flux + inside[r]);
-        }
+        for (std::size_t r = 0; r < 3; ++r)
+            carried.flux[s][r] =
+                chosen(outside_size[r] + magnitude(c[r]), inside_size[r] + magnitude(flux[r]),
+                       c[r] + outside[r], flux[r] + inside[r]);
+        carried.total_flux[s] =
+            chosen(dot(sizes(total), y_size) + magnitude(c_total),
+                   inside_size[1] + inside_size[2] + magnitude(flux[1]) + magnitude(flux[2]),
+                   c_total + dot(total, y), flux[1] + flux[2] + inside[1] + inside[2]);
         node.source[s] = y;
     }
     return coupling;
@@ -242,15 +292,18 @@ Block begin(const Cell<double>& cell, const Block& own, const std::array<bool, 3
             drive[r] = -source[s][r] - (is_set[r] ? 0 : flux[r]);
         }
         const Triple<double> y = product(i, drive), inside = cell.near_times(y),
-                             inside_size = cell.near_size(y), outside = product(own, y),
-                             outside_size = size_of_product(own, y);
+                             inside_size = cell.near_size(sizes(y)), outside = product(own, y),
+                             outside_size = size_of_product(own, sizes(y));
         for (std::size_t r = 0; r < 3; ++r)
             carried.flux[s][r] =
                 !is_set[r] && outside_size[r] + std::abs(source[s][r]) < inside_size[r] + std::abs(flux[r])
                     ? -source[s][r] - outside[r]
                     : flux[r] + inside[r];
+        carried.total_flux[s] = carried.flux[s][1] + carried.flux[s][2];
         source[s] = y;
     }
+    for (std::size_t j = 0; j < 3; ++j)
+        carried.total_admittance[j] = carried.admittance[3 + j] + carried.admittance[6 + j];
     return coupling;
 }
 
@@ -338,8 +391,12 @@ void pass_in_pairs(const BlockTridiagonal& m, std::size_t pairs, std::vector<dou
     Carried<LanePair, sides> carried;
     for (std::size_t e = 0; e < 9; ++e)
         carried.admittance[e] = pair(end[0].admittance[e], end[1].admittance[e]);
-    for (std::size_t s = 0; s < sides; ++s)
+    for (std::size_t j = 0; j < 3; ++j)
+        carried.total_admittance[j] = pair(end[0].total_admittance[j], end[1].total_admittance[j]);
+    for (std::size_t s = 0; s < sides; ++s) {
         for (std::size_t r = 0; r < 3; ++r) carried.flux[s][r] = pair(end[0].flux[s][r], end[1].flux[s][r]);
+        carried.total_flux[s] = pair(end[0].total_flux[s], end[1].total_flux[s]);
+    }
     for (std::size_t k = 1; k < pairs; ++k) {
         const std::size_t a = k, b = last - k;
         Node<LanePair, sides> node{pair(m.potential_by_both[a], m.potential_by_both[b]),
@@ -360,8 +417,11 @@ void pass_in_pairs(const BlockTridiagonal& m, std::size_t pairs, std::vector<dou
     }
     for (std::size_t lane = 0; lane < 2; ++lane) {
         for (std::size_t e = 0; e < 9; ++e) end[lane].admittance[e] = carried.admittance[e][lane];
-        for (std::size_t s = 0; s < sides; ++s)
+        for (std::size_t j = 0; j < 3; ++j) end[lane].total_admittance[j] = carried.total_admittance[j][lane];
+        for (std::size_t s = 0; s < sides; ++s) {
             for (std::size_t r = 0; r < 3; ++r) end[lane].flux[s][r] = carried.flux[s][r][lane];
+            end[lane].total_flux[s] = carried.total_flux[s][lane];
+        }
     }
 }
 
@@ -371,13 +431,19 @@ void join(const BlockTridiagonal& m, std::size_t node, const std::array<Carried<
           const Steps<sides>& x) {
     Block b = own_block(m, node);
     for (std::size_t e = 0; e < 9; ++e) b[e] -= end[0].admittance[e] + end[1].admittance[e];
-    auto c = source_of<sides>(m, node, {});
     const bool is_last = node + 1 == m.blocks();
-    for (std::size_t r = 0; r < 3; ++r) {
-        const bool is_set = is_last && m.last_is_set[r];
-        if (is_set) set_row(b, r, m.holes_lead[node]);
-        for (std::size_t s = 0; s < sides; ++s)
+    Triple<double> total;
+    for (std::size_t j = 0; j < 3; ++j) total[j] = -(end[0].total_admittance[j] + end[1].total_admittance[j]);
+    const bool used = !is_last && use_total(b, total) > 0.5;
+    auto c = source_of<sides>(m, node, {});
+    for (std::size_t s = 0; s < sides; ++s) {
+        const double of_total = end[0].total_flux[s] + end[1].total_flux[s] - (c[s][1] + c[s][2]);
+        for (std::size_t r = 0; r < 3; ++r) {
+            const bool is_set = is_last && m.last_is_set[r];
+            if (is_set) set_row(b, r, m.holes_lead[node]);
             c[s][r] = (is_set ? 0 : end[0].flux[s][r] + end[1].flux[s][r]) - c[s][r];
+        }
+        if (used) c[s][2] = of_total;
     }
     const Block i = inverse(b);
     for (std::size_t s = 0; s < sides; ++s) c[s] = product(i, c[s]);

@@ -21,16 +21,21 @@ std::string list_of(const std::vector<std::string>& items) {
     return text + "\n  ";
 }
 
+// An energy that lies in every gap [eV below the vacuum level], silicon's too. Gaps that do not overlap at
+// all would call for densities of 1e90 cm-3 at their interface: the equations end there.
+constexpr double common_level = 5;
+
 std::string own_material(Dice& dice, const std::string& name) {
     const double gap = dice.log_between(0.3, 6);
     std::string text = fmt::format(
         R"("{}": {{"relative_permittivity": {}, "electron_affinity": {}, "bandgap": {}, )"
         R"("conduction_band_effective_density": {}, "valence_band_effective_density": {}, )"
         R"("electron_mobility": {}, "hole_mobility": {}, "electron_lifetime": {}, "hole_lifetime": {})",
-        name, number(dice.log_between(3, 30)), quantity(dice.log_between(1, 5), "eV"), quantity(gap, "eV"),
-        quantity(dice.log_between(1e17, 1e21), "cm-3"), quantity(dice.log_between(1e17, 1e21), "cm-3"),
-        quantity(dice.log_between(1, 1e4), "cm2 V-1 s-1"), quantity(dice.log_between(1, 1e4), "cm2 V-1 s-1"),
-        quantity(dice.log_between(1e-9, 1e-3), "s"), quantity(dice.log_between(1e-9, 1e-3), "s"));
+        name, number(dice.log_between(3, 30)), quantity(common_level - gap * dice.between(0.2, 0.8), "eV"),
+        quantity(gap, "eV"), quantity(dice.log_between(1e17, 1e21), "cm-3"),
+        quantity(dice.log_between(1e17, 1e21), "cm-3"), quantity(dice.log_between(1, 1e4), "cm2 V-1 s-1"),
+        quantity(dice.log_between(1, 1e4), "cm2 V-1 s-1"), quantity(dice.log_between(1e-9, 1e-3), "s"),
+        quantity(dice.log_between(1e-9, 1e-3), "s"));
     if (dice.chance(0.5))
         text += fmt::format(R"(, "trap_level": {})", quantity(gap * dice.between(-0.4, 0.4), "eV"));
     if (dice.chance(0.5))
