@@ -34,7 +34,6 @@ namespace {
 
 // A density that would fall to less than 1e-7 of itself falls by exp(16) at most in one step.
 constexpr double least_change = -1 + 1e-7, deepest_fall = -16;
-constexpr double small_change = 0.5;
 
 // ln(1 + r), by its series where r is small: the next term is below 1e-18 of it.
 double log_change(double r) {
@@ -46,17 +45,6 @@ double log_change(double r) {
 // Relative changes of the densities that a change of (psi, phi_n - psi, phi_p - psi) means.
 double electron_change(const double* gaps) { return -gaps[1]; }
 double hole_change(const double* gaps) { return gaps[2]; }
-
-// Whether every density changes by less than this share of itself. Such a step is taken straight, levels and
-// all: the quasi-Fermi level of a floating region then stays as flat as the linear step has it, undisturbed
-// by terms of second order at its edges, which a leakage current many decades below the majority flux could
-// not mend.
-bool is_small(const std::vector<double>& d) {
-    for (std::size_t k = 0; k + 2 < d.size(); k += 3)
-        if (std::abs(electron_change(&d[k])) > small_change || std::abs(hole_change(&d[k])) > small_change)
-            return false;
-    return true;
-}
 
 double capped(double change, double cap) {
     return std::abs(change) <= cap ? change
@@ -156,7 +144,6 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
                 (1 + drop * slope);
             for (std::size_t k = 0; k < size; ++k) d[k] += change_of_contact * z[k];
         }
-        const bool straight = options.straight_when_small && is_small(d);
         double worst = 0;
         for (std::size_t node = 0; node < system.nodes(); ++node) {
             const double* gaps = &d[3 * node];
@@ -164,8 +151,8 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
             const double sizes[3] = {std::abs(gaps[0]), std::abs(rn), std::abs(rp)};
             const double moved = capped(gaps[0], options.cap);
             x[3 * node] = moved;
-            x[3 * node + 1] = moved - (straight ? rn : log_change(rn));
-            x[3 * node + 2] = moved + (straight ? rp : log_change(rp));
+            x[3 * node + 1] = moved - log_change(rn);
+            x[3 * node + 2] = moved + log_change(rp);
             for (int k = 0; k < 3; ++k)
                 if (sizes[k] > worst) {
                     worst = sizes[k];

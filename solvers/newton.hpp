@@ -48,10 +48,6 @@ struct NewtonOptions {
     double cap = 10;
     /// Converged when the step that would come next is predicted below this.
     double tolerance = 1e-10;
-    /// Take a step in which every density changes by less than half straight, levels and all, instead of
-    /// letting densities take it. A little slower, but a floating region's level is then not disturbed by its
-    /// edges.
-    bool straight_when_small = false;
 };
 
 /// Solves one system again and again: keeps its workspace and last factorisation.

@@ -61,19 +61,10 @@ bool BiasWalk::start_from(State guess, double applied_voltage) {
     return true;
 }
 
-bool BiasWalk::solve(State& guess, double applied_voltage, NewtonOptions options) {
-    const State before = guess;
-    for (const bool other : {false, true}) {
-        options.straight_when_small = other != straight_when_small_;
-        guess = before;
-        report_ = solver_.solve(guess, applied_voltage, options);
-        iterations_ += report_.iterations;
-        if (report_.converged()) {
-            straight_when_small_ = options.straight_when_small;
-            return true;
-        }
-    }
-    return false;
+bool BiasWalk::solve(State& guess, double applied_voltage, const NewtonOptions& options) {
+    report_ = solver_.solve(guess, applied_voltage, options);
+    iterations_ += report_.iterations;
+    return report_.converged();
 }
 
 BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux,

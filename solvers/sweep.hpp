@@ -40,8 +40,7 @@ class BiasWalk {
     const DiscreteSystem& system() const { return solver_.system(); }
 
   private:
-    // Newton from a guess, with the kind of step that served last and, where that fails, the other one.
-    bool solve(State& guess, double applied_voltage, NewtonOptions options);
+    bool solve(State& guess, double applied_voltage, const NewtonOptions& options);
 
     NewtonSolver solver_;
     State state_;
@@ -52,7 +51,6 @@ class BiasWalk {
     long iterations_ = 0, rejected_ = 0;
     // The workspace holds the equations of state_; its last Jacobian belongs to a step that ended there.
     bool is_fresh_ = false, is_seen_ = false;
-    bool straight_when_small_ = false;
 };
 
 /// One sentence on a solve that has not converged: bias, remaining change, its place and layer.
