@@ -51,7 +51,9 @@ void expect_moments(const ImplantShape& shape, const Moments& wanted, double cen
     EXPECT_NEAR(m.range / wanted.range, 1, 1e-8);
     EXPECT_NEAR(m.straggle / wanted.straggle, 1, 1e-8);
     EXPECT_NEAR(m.skewness, wanted.skewness, 1e-7);
-    if (wanted.kurtosis) EXPECT_NEAR(m.kurtosis, *wanted.kurtosis, 1e-6);
+    if (wanted.kurtosis) {
+        EXPECT_NEAR(m.kurtosis, *wanted.kurtosis, 1e-6);
+    }
 }
 
 }  // namespace
