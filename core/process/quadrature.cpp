@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <array>
 #include <cmath>
+#include <limits>
 #include <numbers>
 #include <vector>
 
@@ -12,6 +13,8 @@ namespace {
 
 constexpr int order = 16;
 constexpr int deepest = 40;
+// A difference below this share of the integral that no longer shrinks is rounding.
+constexpr double rounding_share = 1e-10;
 
 struct Rule {
     std::array<double, order> node{}, weight{};
@@ -55,17 +58,25 @@ Sums panel(const std::function<double(double)>& f, double low, double high) {
     return sums;
 }
 
-/// The integral over a piece whose sums are known; size is raised when the pieces turn out larger.
-double refined(const std::function<double(double)>& f, double low, double high, Sums whole, double tolerance,
-               double& size, int depth) {
-    const double middle = 0.5 * (low + high);
-    const Sums left = panel(f, low, middle), right = panel(f, middle, high);
-    size = std::max(size, left.absolute + right.absolute);
-    const double both = left.plain + right.plain;
-    if (depth >= deepest || std::abs(both - whole.plain) <= tolerance * size) return both;
-    return refined(f, low, middle, left, tolerance, size, depth + 1) +
-           refined(f, middle, high, right, tolerance, size, depth + 1);
-}
+/// An integral in the making.
+struct Integral {
+    const std::function<double(double)>& f;
+    double tolerance;
+    /// Largest estimate so far of the integral of |f|.
+    double size = 0;
+
+    /// The integral over a piece whose sums are known; before: the difference that made its parent be halved.
+    double over(double low, double high, Sums whole, double before, int depth) {
+        const double middle = 0.5 * (low + high);
+        const Sums left = panel(f, low, middle), right = panel(f, middle, high);
+        size = std::max(size, left.absolute + right.absolute);
+        const double both = left.plain + right.plain, difference = std::abs(both - whole.plain);
+        const bool rounding = difference > 0.5 * before && difference <= rounding_share * size;
+        if (depth >= deepest || difference <= tolerance * size || rounding) return both;
+        return over(low, middle, left, difference, depth + 1) +
+               over(middle, high, right, difference, depth + 1);
+    }
+};
 
 }  // namespace
 
@@ -77,15 +88,15 @@ double integral(const std::function<double(double)>& f, double low, double high,
         if (point > low && point < high) cuts.push_back(point);
     std::ranges::sort(cuts);
     cuts.erase(std::unique(cuts.begin(), cuts.end()), cuts.end());
+    Integral pieces{f, tolerance};
     std::vector<Sums> sums;
-    double size = 0;
     for (std::size_t k = 0; k + 1 < cuts.size(); ++k) {
         sums.push_back(panel(f, cuts[k], cuts[k + 1]));
-        size += sums.back().absolute;
+        pieces.size += sums.back().absolute;
     }
     double total = 0;
     for (std::size_t k = 0; k + 1 < cuts.size(); ++k)
-        total += refined(f, cuts[k], cuts[k + 1], sums[k], tolerance, size, 0);
+        total += pieces.over(cuts[k], cuts[k + 1], sums[k], std::numeric_limits<double>::infinity(), 0);
     return total;
 }
 
