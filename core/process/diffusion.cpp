@@ -15,8 +15,8 @@ using std::numbers::pi;
 // A kernel exp(-u^2) is left out where u is above this: below 1e-39.
 constexpr double widest = 9.5;
 constexpr double quadrature_tolerance = 1e-12;
-// Beyond this many square thicknesses a budget has made every profile flat: exp(-pi^2 5) is 4e-22.
-constexpr double flattening = 5;
+// Beyond this many square thicknesses a budget has made every profile flat: exp(-pi^2 4) is 7e-18.
+constexpr double flattening = 4;
 
 /// erf(high) - erf(low) without cancellation when both lie on one side of zero.
 double erf_difference(double low, double high) {

@@ -15,6 +15,8 @@ constexpr int order = 16;
 constexpr int deepest = 40;
 // A difference below this share of the integral that no longer shrinks is rounding.
 constexpr double rounding_share = 1e-10;
+// Near the smallest double, values lose digits and so their smoothness: such a difference is none.
+constexpr double nothing = 1e-300;
 
 struct Rule {
     std::array<double, order> node{}, weight{};
@@ -72,7 +74,7 @@ struct Integral {
         size = std::max(size, left.absolute + right.absolute);
         const double both = left.plain + right.plain, difference = std::abs(both - whole.plain);
         const bool rounding = difference > 0.5 * before && difference <= rounding_share * size;
-        if (depth >= deepest || difference <= tolerance * size || rounding) return both;
+        if (depth >= deepest || difference <= std::max(tolerance * size, nothing) || rounding) return both;
         return over(low, middle, left, difference, depth + 1) +
                over(middle, high, right, difference, depth + 1);
     }
