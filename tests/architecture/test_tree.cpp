@@ -39,7 +39,10 @@ const std::map<std::string, std::vector<std::string>> forbidden{
     {"solvers", {"io/", "apps/", "nlohmann/", "hdf5", "CLI/"}},
     {"io", {"solvers/", "apps/", "kinsol/", "sundials/", "nvector/", "CLI/"}},
     {"apps", {"nlohmann/", "hdf5", "kinsol/", "sundials/", "nvector/"}},
-    {"core/base", {"core/models/", "core/device/", "core/mesh/", "core/discretization/", "core/figures/"}},
+    {"core/base",
+     {"core/models/", "core/process/", "core/device/", "core/mesh/", "core/discretization/",
+      "core/figures/"}},
+    {"core/process", {"core/models/", "core/device/", "core/mesh/", "core/discretization/", "core/figures/"}},
     {"core/mesh", {"core/discretization/", "core/figures/"}},
     {"core/discretization", {"core/figures/"}},
 };
