@@ -11,37 +11,29 @@
 #include "core/base/text.hpp"
 #include "core/figures/sheet_resistance.hpp"
 #include "core/models/mobility.hpp"
+#include "core/process/quadrature.hpp"
 #include "io/results/summary.hpp"
 
 namespace bandwright {
 
 namespace {
 
-std::string name_of(const DopingShape& shape) {
-    return std::string(std::visit([](const auto& alternative) { return alternative.name; }, shape));
-}
-
-// Dose of one entry over the part of the stack that it reaches [m^-2], composite Gauss rule on its own
-// breaks.
-double dose_of(const Structure& structure, const DopingEntry& entry) {
+// Dose of one entry over the part of the stack that it reaches [m^-2], and its largest concentration there.
+struct EntryFigures {
+    double dose, peak;
+};
+EntryFigures figures_of(const Structure& structure, const DopingEntry& entry) {
     const std::vector<double> boundaries = layer_boundaries(structure);
     const double from = entry.layer ? boundaries[*entry.layer] : 0,
                  to = entry.layer ? boundaries[*entry.layer + 1] : boundaries.back();
-    std::vector<double> cuts{from, to};
-    for (const double x : breakpoints(entry.shape)) cuts.push_back(x);
+    std::vector<double> cuts = breakpoints(entry.shape);
     for (const Scale& scale : scales(entry.shape, boundaries.back()))
-        for (int k = -32; k <= 32; ++k) cuts.push_back(scale.depth + 0.25 * k * scale.length);
-    std::erase_if(cuts, [&](double x) { return x < from || x > to; });
-    std::sort(cuts.begin(), cuts.end());
-    double dose = 0;
-    for (std::size_t k = 0; k + 1 < cuts.size(); ++k) {
-        const double middle = 0.5 * (cuts[k] + cuts[k + 1]), half = 0.5 * (cuts[k + 1] - cuts[k]);
-        const double reach = half * std::sqrt(0.6);
-        dose += half / 9 *
-                (5 * concentration(entry.shape, middle - reach) + 8 * concentration(entry.shape, middle) +
-                 5 * concentration(entry.shape, middle + reach));
-    }
-    return dose;
+        for (int k = -16; k <= 16; ++k) cuts.push_back(scale.depth + 0.5 * k * scale.length);
+    const auto profile = [&](double x) { return concentration(entry.shape, x); };
+    double peak = std::max(profile(from), profile(std::nextafter(to, from)));
+    for (const double x : cuts)
+        if (x >= from && x < to) peak = std::max(peak, profile(x));
+    return {integral(profile, from, to, cuts), peak};
 }
 
 void print_layers(const Structure& structure) {
@@ -70,19 +62,26 @@ void print_layers(const Structure& structure) {
 
 void print_doping(const Structure& structure) {
     if (structure.doping.empty()) return;
-    TextTable table{{"#", "dopant", "kind", "layer", "dose in the stack"},
-                    {"", "", "", "", "cm-2"},
+    TextTable table{{"#", "dopant", "kind", "layer", "dose in the stack", "largest"},
+                    {"", "", "", "", "cm-2", "cm-3"},
                     {false, true, true, true},
                     {}};
     for (std::size_t k = 0; k < structure.doping.size(); ++k) {
         const DopingEntry& entry = structure.doping[k];
         const bool linear = std::holds_alternative<LinearDoping>(entry.shape);
-        table.rows.push_back(
-            {std::to_string(k), linear ? "net" : entry.dopant, name_of(entry.shape),
-             entry.layer ? structure.layers[*entry.layer].name : "all",
-             linear ? "-" : fmt::format("{:.6g}", shown(dose_of(structure, entry), Unit::areal_density))});
+        const EntryFigures figures = figures_of(structure, entry);
+        table.rows.push_back({std::to_string(k), linear ? "net" : entry.dopant, kind_of(entry.shape),
+                              entry.layer ? structure.layers[*entry.layer].name : "all",
+                              linear ? "-" : fmt::format("{:.6g}", shown(figures.dose, Unit::areal_density)),
+                              linear ? "-" : fmt::format("{:.4g}", shown(figures.peak, Unit::density))});
     }
-    fmt::print("Doping\n{}\n", table.text());
+    fmt::print("Doping, after all anneals\n{}", table.text());
+    for (std::size_t k = 0; k < structure.doping.size(); ++k)
+        if (const auto* implant = std::get_if<ImplantDoping>(&structure.doping[k].shape))
+            fmt::print("  {}: {:.5g} cm-2 implanted, {:.5g} cm-2 came to rest below the films\n", k,
+                       shown(implant->dose, Unit::areal_density),
+                       shown(implant->retained_dose, Unit::areal_density));
+    fmt::print("\n");
 }
 
 void print_junctions(const Results& results) {
@@ -103,15 +102,25 @@ void print_junctions(const Results& results) {
                  junction.p_above ? "V_top > V_bottom" : "V_top < V_bottom"});
         fmt::print("Junctions\n{}\n", table.text());
     }
-    TextTable table{{"from", "to", "type", "sheet resistance"},
-                    {"um", "um", "", "ohm per square"},
+    TextTable table{{"from", "to", "type", "sheet resistance", "net dose", "largest", "at",
+                     "Debye length there", "emptied by"},
+                    {"um", "um", "", "ohm per square", "cm-2", "cm-3", "um", "nm", "V"},
                     {false, false, true},
                     {}};
+    const auto number = [](double value, const char* format = "{:.6g}") {
+        return std::isnan(value) ? std::string("-") : fmt::format(fmt::runtime(format), value);
+    };
     for (const SheetLine& sheet : results.sheet_resistances)
-        table.rows.push_back({fmt::format("{:.6g}", shown(sheet.from, Unit::length)),
-                              fmt::format("{:.6g}", shown(sheet.to, Unit::length)), sheet.type,
-                              std::isnan(sheet.value) ? "-" : fmt::format("{:.6g}", sheet.value)});
-    fmt::print("Sheet resistances, flat band\n{}\n", table.text());
+        table.rows.push_back(
+            {fmt::format("{:.6g}", shown(sheet.from, Unit::length)),
+             fmt::format("{:.6g}", shown(sheet.to, Unit::length)), sheet.type, number(sheet.value),
+             number(shown(sheet.dose, Unit::areal_density)), number(shown(sheet.peak, Unit::density)),
+             number(shown(sheet.peak_depth, Unit::length)), number(1e9 * sheet.debye_length, "{:.4g}"),
+             number(sheet.depleting_potential, "{:.5g}")});
+    fmt::print(
+        "Regions between junctions (sheet resistance at flat band; \"emptied by\" is the total junction "
+        "potential)\n{}\n",
+        table.text());
 }
 
 void print_models(const Structure& structure) {

@@ -73,11 +73,16 @@ struct JunctionLine {
     double gradient;
 };
 
-/// Sheet resistance of a region between junctions, flat band [ohm per square].
+/// A region between neighbouring junctions (and the ends of the stack): type, sheet resistance, flat band
+/// [ohm per square], net dose [m^-2], largest net doping [m^-3] and its depth [m], Debye length there [m],
+/// and the potential that empties the region from its junctions [V]; no_value where the region has no doping
+/// or no junction.
 struct SheetLine {
     double from, to;
     std::string type;
     double value;
+    double dose = no_value, peak = no_value, peak_depth = no_value, debye_length = no_value,
+           depleting_potential = no_value;
 };
 
 /// The points of a measured profile that a run used [m], [m^-3].

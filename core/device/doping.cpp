@@ -76,7 +76,30 @@ double at(const MeasuredDoping& shape, double x) {
     return std::exp(ln10 * y);
 }
 
+double at(const ImplantDoping& shape, double x) {
+    if (x < 0) return 0;
+    const double all =
+        shape.table ? value(*shape.table, x) : shape.dose * density(shape.shape, x + shape.film_shift);
+    return shape.activation ? std::min(all, *shape.activation) : all;
+}
+
+double at(const DiffusedDoping& shape, double x) { return value(shape.table, x); }
+
+std::vector<Scale> scales_of(const TabulatedProfile& table) {
+    std::vector<Scale> list;
+    for (std::size_t k = 0; k < table.piece.size(); ++k)
+        if (!table.piece[k].empty)
+            list.push_back(
+                {0.5 * (table.edge[k] + table.edge[k + 1]), 0.5 * (table.edge[k + 1] - table.edge[k])});
+    return list;
+}
+
 }  // namespace
+
+std::string kind_of(const DopingShape& shape) {
+    if (const auto* diffused = std::get_if<DiffusedDoping>(&shape)) return diffused->kind;
+    return std::string(std::visit([](const auto& alternative) { return alternative.name; }, shape));
+}
 
 double concentration(const DopingShape& shape, double x) {
     return std::visit([x](const auto& alternative) { return at(alternative, x); }, shape);
@@ -115,6 +138,19 @@ std::vector<Scale> scales(const DopingShape& shape, double total_thickness) {
             list.push_back({0.5 * (measured->depth[k] + measured->depth[k + 1]),
                             0.5 * (measured->depth[k + 1] - measured->depth[k])});
         return list;
+    }
+    if (const auto* diffused = std::get_if<DiffusedDoping>(&shape)) return scales_of(diffused->table);
+    if (const auto* implant = std::get_if<ImplantDoping>(&shape)) {
+        if (implant->table) return scales_of(*implant->table);
+        return std::visit(
+            [&](const auto& form) -> std::vector<Scale> {
+                if constexpr (std::is_same_v<std::decay_t<decltype(form)>, JoinedHalfGaussians>)
+                    return {{form.mode - implant->film_shift, form.above},
+                            {form.mode - implant->film_shift, form.below}};
+                else
+                    return {{form.range - implant->film_shift, form.straggle}};
+            },
+            implant->shape);
     }
     return {};
 }

@@ -1,5 +1,7 @@
 // Doping profiles: the shapes a user can describe and their value at a depth.
-// Not for: implants and anneals (core/process) or which dopant is a donor in which host (structure.hpp).
+// Not for: what a process makes of them (processing.hpp) or which dopant is a donor in which host
+// (structure.hpp).
+//
 // SPDX-License-Identifier: MIT
 #pragma once
 
@@ -8,6 +10,10 @@
 #include <string_view>
 #include <variant>
 #include <vector>
+
+#include "core/process/anneal.hpp"
+#include "core/process/implant.hpp"
+#include "core/process/tabulated_profile.hpp"
 
 namespace bandwright {
 
@@ -67,8 +73,48 @@ struct MeasuredDoping {
     double floor = 0;
 };
 
+/// A film on the surface that an implant goes through; thickness [m].
+struct Film {
+    std::string material;
+    double thickness = 0;
+};
+
+/// An implant as described, and what process() found for it. Energies in eV, doses in m^-2, lengths in m.
+struct ImplantDoping {
+    static constexpr std::string_view name = "implant";
+    std::optional<double> energy;
+    double dose = 0;
+    /// Of the beam from the normal [degree]; depths are multiplied by its cosine.
+    double tilt = 0;
+    /// Largest active concentration [m^-3]; none: all is active.
+    std::optional<double> activation;
+    /// The user's own moments, before every table.
+    std::optional<double> range, straggle, skewness, kurtosis;
+    std::vector<Film> films;
+    std::vector<AnnealStep> anneal;
+
+    /// As implanted, for a unit dose, in silicon without films; and the silicon that the films stand for.
+    ImplantShape shape = GaussianShape{};
+    double film_shift = 0;
+    /// What came to rest below the films [m^-2].
+    double retained_dose = 0;
+    /// The profile after all anneals; none: as implanted.
+    std::optional<TabulatedProfile> table;
+};
+
+/// Any other profile after the structure's anneals.
+struct DiffusedDoping {
+    static constexpr std::string_view name = "diffused";
+    /// The kind it was described as.
+    std::string kind;
+    TabulatedProfile table;
+};
+
 using DopingShape = std::variant<UniformDoping, StepDoping, GaussianDoping, ErfcDoping, ExponentialDoping,
-                                 LinearDoping, MeasuredDoping>;
+                                 LinearDoping, MeasuredDoping, ImplantDoping, DiffusedDoping>;
+
+/// The kind that a user wrote: that of the alternative, or what a diffused profile was before.
+std::string kind_of(const DopingShape& shape);
 
 /// Concentration of a shape at a depth [m^-3]; LinearDoping gives the signed net doping.
 /// At a jump the value is that of the deeper side. Errors: none.

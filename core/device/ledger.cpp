@@ -95,6 +95,7 @@ Ledger ledger(const Structure& structure) {
                 lines.push_back({key, material.name, material.parameters.find(key)->second});
         add_recombination(structure, material, lines);
     }
+    lines.insert(lines.end(), structure.process.begin(), structure.process.end());
     add_contact("top contact", structure.top, lines);
     add_contact("bottom contact", structure.bottom, lines);
     return lines;

@@ -57,6 +57,10 @@ struct Structure {
     std::vector<Material> materials;
     std::vector<Layer> layers;
     std::vector<DopingEntry> doping;
+    /// Common anneals after all others; process() applies them.
+    std::vector<AnnealStep> anneal;
+    /// Ranges and diffusivities that process() used.
+    Ledger process;
     Contact top, bottom;
     Models models;
     MeshRequest mesh;

@@ -93,4 +93,27 @@ inline constexpr auto fields_of(const MeasuredDoping*) {
                  "the concentration that counts as zero"}};
 }
 
+inline constexpr Range up_to_right_angle{0, 89, true, "0 to 89 degree"};
+
+inline constexpr auto fields_of(const ImplantDoping*) {
+    using S = ImplantDoping;
+    return std::array{
+        Field<S>{"energy", &S::energy, Unit::energy, above_zero, Presence::optional, "the energy"},
+        Field<S>{"dose", &S::dose, Unit::areal_density, zero_or_more, Presence::required,
+                 "the implanted dose"},
+        Field<S>{"tilt", &S::tilt, Unit::angle, up_to_right_angle, Presence::optional,
+                 "the angle of the beam from the normal"},
+        Field<S>{"activation", &S::activation, Unit::density, above_zero, Presence::optional,
+                 "the largest active concentration"},
+        Field<S>{"range", &S::range, Unit::length, above_zero, Presence::optional, "the projected range"},
+        Field<S>{"straggle", &S::straggle, Unit::length, above_zero, Presence::optional,
+                 "the standard deviation of the range"},
+        Field<S>{"skewness", &S::skewness, Unit::one, any_number, Presence::optional, "the skewness"},
+        Field<S>{"kurtosis", &S::kurtosis, Unit::one, above_zero, Presence::optional,
+                 "the kurtosis, 3 for a Gaussian"}};
+}
+
+// Never read: what an anneal makes of the others.
+inline constexpr auto fields_of(const DiffusedDoping*) { return std::array<Field<DiffusedDoping>, 0>{}; }
+
 }  // namespace bandwright::detail

@@ -10,8 +10,8 @@
 #include "io/input/csv.hpp"
 #include "io/input/doping_fields.hpp"
 #include "io/input/message_text.hpp"
-#include "io/input/not_available.hpp"
 #include "io/input/quantity.hpp"
+#include "io/input/read_anneal.hpp"
 #include "io/input/read_fields.hpp"
 #include "io/input/read_file.hpp"
 
@@ -36,6 +36,30 @@ void check_shape(const Cursor& place, GaussianDoping&, DopingContext&, bool) {
     const bool has_peak = place.find("peak").has_value(), has_dose = place.find("dose").has_value();
     if (has_peak && has_dose) place.complain("a gaussian doping takes either peak or dose; both are given");
     if (!has_peak && !has_dose) place.complain("a gaussian doping needs either peak or dose");
+}
+
+constexpr std::array film_fields{
+    Field<Film>{"material", &Film::material, Unit::one, any_number, Presence::required, "SiO2 or Si3N4"},
+    Field<Film>{"thickness", &Film::thickness, Unit::length, above_zero, Presence::required, "the thickness"},
+};
+
+void check_shape(const Cursor& place, ImplantDoping& shape, DopingContext&, bool) {
+    if (shape.range.has_value() != shape.straggle.has_value())
+        place.complain("range and straggle go together: give both or neither");
+    if (shape.kurtosis && !shape.skewness)
+        place.complain("a kurtosis needs a skewness beside it (0 for a symmetric profile)");
+    if (const auto anneal = place.find("anneal")) shape.anneal = read_anneal(*anneal);
+    const auto through = place.find("through");
+    if (!through || !through->expect_list("through", R"([ { "material": "SiO2", "thickness": "20 nm" } ])"))
+        return;
+    for (const Cursor& item : through->items()) {
+        Film film;
+        if (item.expect_object("a film")) {
+            item.refuse_other_keys("a film", keys_of(film_fields));
+            read_fields(item, film_fields, film);
+        }
+        shape.films.push_back(film);
+    }
 }
 
 /// A unit of the wanted kind as text, for the columns of a measured profile.
@@ -101,6 +125,11 @@ void check_shape(const Cursor& place, MeasuredDoping& shape, DopingContext& cont
                                                shape.file, depth_text(shape.depth.back())));
 }
 
+/// Kinds that can be written: all but the last, which an anneal makes.
+constexpr auto written_kinds = std::make_index_sequence<std::variant_size_v<DopingShape> - 1>{};
+static_assert(std::is_same_v<std::variant_alternative_t<std::variant_size_v<DopingShape> - 1, DopingShape>,
+                             DiffusedDoping>);
+
 template <std::size_t... index>
 std::vector<std::string> names_of_kinds(std::index_sequence<index...>) {
     return {std::string(std::variant_alternative_t<index, DopingShape>::name)...};
@@ -115,6 +144,7 @@ std::vector<std::string> keys_of_kind() {
     for (const std::string& key : keys_of(fields)) keys.push_back(key);
     if constexpr (std::is_same_v<S, MeasuredDoping>)
         keys.insert(keys.begin() + 2, {"depth_unit", "concentration_unit"});
+    if constexpr (std::is_same_v<S, ImplantDoping>) keys.insert(keys.end(), {"through", "anneal"});
     keys.emplace_back("layer");
     return keys;
 }
@@ -165,7 +195,7 @@ void read_layer_limit(const Cursor& place, const DopingContext& context, DopingE
 
 std::optional<DopingEntry> read_doping_entry(const Cursor& place, DopingContext& context) {
     if (!place.expect_object("a doping")) return std::nullopt;
-    constexpr auto kinds = std::make_index_sequence<std::variant_size_v<DopingShape>>{};
+    constexpr auto kinds = written_kinds;
     const std::vector<std::string> names = names_of_kinds(kinds);
     const auto kind_place = place.find("kind");
     if (!kind_place) {
@@ -174,11 +204,6 @@ std::optional<DopingEntry> read_doping_entry(const Cursor& place, DopingContext&
     }
     const auto kind = kind_place->text("a kind of doping");
     if (!kind) return std::nullopt;
-    if (*kind == "implant") {
-        kind_place->complain(not_available_yet(
-            "implant", "describe the profile with gaussian, dose and straggle, or as measured"));
-        return std::nullopt;
-    }
     auto shape = read_kind(*kind, place, context, kinds);
     if (!shape) {
         kind_place->complain(unknown_name("kind of doping", *kind, names));

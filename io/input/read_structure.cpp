@@ -6,11 +6,12 @@
 #include <algorithm>
 #include <utility>
 
+#include "core/device/processing.hpp"
 #include "io/input/cursor.hpp"
 #include "io/input/material_database.hpp"
 #include "io/input/message_text.hpp"
-#include "io/input/not_available.hpp"
 #include "io/input/overrides.hpp"
+#include "io/input/read_anneal.hpp"
 #include "io/input/read_doping.hpp"
 #include "io/input/read_fields.hpp"
 #include "io/input/read_file.hpp"
@@ -119,9 +120,9 @@ bool read_document(const Cursor& whole, const std::filesystem::path& folder, Str
     if (!whole.expect_object("a structure file")) return false;
     std::vector<std::string> shown{"format"};
     for (const std::string& key : keys_of(structure_fields)) shown.push_back(key);
-    shown.insert(shown.end(), {"materials", "layers", "doping", "contacts", "models", "mesh"});
+    shown.insert(shown.end(), {"materials", "layers", "doping", "anneal", "contacts", "models", "mesh"});
     std::vector<std::string> known = shown;
-    known.insert(known.end(), {"$schema", "anneal"});
+    known.emplace_back("$schema");
     whole.refuse_other_keys("a structure file", known, shown);
 
     check_format(whole);
@@ -144,8 +145,7 @@ bool read_document(const Cursor& whole, const std::filesystem::path& folder, Str
                 if (auto read = read_doping_entry(entry, context))
                     structure.doping.push_back(std::move(*read));
     }
-    if (const auto anneal = whole.find("anneal"))
-        anneal->complain(not_available_yet("anneal", "give the profiles as they are after it"));
+    if (const auto anneal = whole.find("anneal")) structure.anneal = read_anneal(*anneal);
     if (const auto contacts = whole.find("contacts")) read_contacts(*contacts, structure);
     if (const auto models = whole.find("models")) read_models(*models, structure.models);
     if (const auto mesh = whole.find("mesh")) read_mesh(*mesh, structure.mesh);
@@ -173,6 +173,7 @@ ReadResult read_structure_text(std::string bytes, const std::string& shown_name,
     result.structure.title = std::filesystem::path(shown_name).stem().string();
     const bool file_is_unreadable = read_document(Cursor(*parsed.value, "", found), folder, result.structure);
     if (file_is_unreadable && found.size() == 1) throw FileError(InputError(shown_name, found).what());
+    if (found.empty()) found = process(result.structure);
     if (found.empty()) found = complaints(result.structure);
     if (!found.empty()) throw InputError(shown_name, found);
     result.used = json_text(*parsed.value);

@@ -46,9 +46,16 @@ Json figures_of(const Results& results) {
         sheets.push_back({{"from", in_unit(sheet.from, Unit::length)},
                           {"to", in_unit(sheet.to, Unit::length)},
                           {"type", sheet.type},
-                          {"value", in_unit(sheet.value, Unit::sheet_resistance)}});
-    figures["sheet_resistances"] = {
-        {"value", sheets}, {"unit", {{"from", "um"}, {"to", "um"}, {"value", "ohm"}}}, {"error", nullptr}};
+                          {"value", in_unit(sheet.value, Unit::sheet_resistance)},
+                          {"dose", in_unit(sheet.dose, Unit::areal_density)},
+                          {"peak", in_unit(sheet.peak, Unit::density)},
+                          {"peak_depth", in_unit(sheet.peak_depth, Unit::length)},
+                          {"debye_length", in_unit(sheet.debye_length, Unit::length)},
+                          {"depleting_potential", in_unit(sheet.depleting_potential, Unit::voltage)}});
+    const Json units{
+        {"from", "um"},   {"to", "um"},         {"value", "ohm"},       {"dose", "cm-2"},
+        {"peak", "cm-3"}, {"peak_depth", "um"}, {"debye_length", "um"}, {"depleting_potential", "V"}};
+    figures["sheet_resistances"] = {{"value", sheets}, {"unit", units}, {"error", nullptr}};
     return figures;
 }
 
