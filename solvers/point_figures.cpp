@@ -21,6 +21,7 @@ constexpr PointFigureInfo table[point_figure_count] = {
     {"depletion_width", Unit::length, "distance of the half-depletion points"},
     {"built_in_potential", Unit::voltage, "potential between the neutral neighbours of the junction"},
     {"contact_potential", Unit::voltage, "potential from contact to contact, magnitude"},
+    {"zero_bias_capacitance", Unit::capacitance, "change of the hole charge per voltage at equilibrium"},
 };
 
 constexpr double safety = 2;

@@ -21,9 +21,10 @@ enum class PointFigure {
     depletion_bottom_edge,
     depletion_width,
     built_in_potential,
-    contact_potential
+    contact_potential,
+    zero_bias_capacitance
 };
-inline constexpr std::size_t point_figure_count = 10;
+inline constexpr std::size_t point_figure_count = 11;
 
 /// Name, unit and meaning of a point figure.
 struct PointFigureInfo {
@@ -42,7 +43,7 @@ struct PointFigures {
     double operator[](PointFigure figure) const { return values[static_cast<std::size_t>(figure)]; }
 };
 
-/// Reads all figures off a state; `which` junction of `junctions` (none when empty). iteration_error:
+/// Reads all figures but the zero-bias capacitance (BiasWalk::capacitance) off a state; `which` junction of `junctions` (none when empty). iteration_error:
 /// NewtonReport's.
 PointFigures point_figures(const DiscreteSystem& system, const State& state, const Equations& equations,
                            const std::vector<Metallurgical>& junctions, std::size_t which,

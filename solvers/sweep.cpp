@@ -5,6 +5,7 @@
 #include <algorithm>
 #include <cmath>
 
+#include "core/base/constants.hpp"
 #include "core/base/error.hpp"
 #include "core/figures/terminal.hpp"
 #include "solvers/equilibrium.hpp"
@@ -114,5 +115,19 @@ const Equations& BiasWalk::equations() {
 }
 
 double BiasWalk::flux() { return terminal_current(solver_.system(), state_, equations()).flux; }
+
+double BiasWalk::capacitance() {
+    const Equations& e = equations();
+    const NewtonSolver::Tangent tangent = solver_.tangent(state_, is_seen_);
+    const DiscreteSystem& system = solver_.system();
+    double sum = 0;  // change of the holes [m^-2] per kT/q
+    for (std::size_t cell = 0; cell < system.cells(); ++cell) {
+        const EndState l = e.left(cell), r = e.right(cell);
+        sum += 0.5 * system.mesh.width(cell) *
+               (l.p * l.ratio_p * tangent.by_contact_voltage[3 * cell + 2] +
+                r.p * r.ratio_p * tangent.by_contact_voltage[3 * cell + 5]);
+    }
+    return std::abs(sum) * constants::elementary_charge / system.thermal_voltage;
+}
 
 }  // namespace bandwright

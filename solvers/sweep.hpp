@@ -34,6 +34,10 @@ class BiasWalk {
     /// Equations of state(), evaluated again when needed.
     const Equations& equations();
     double flux();
+    /// Charge of all holes per voltage between the contacts at the present state [F/m^2], from the tangent of the
+    /// solved system; the charge of all electrons gives the same. Quasi-static: at equilibrium it is the
+    /// capacitance of the depletion layers.
+    double capacitance();
 
     long iterations() const { return iterations_; }
     long rejected() const { return rejected_; }

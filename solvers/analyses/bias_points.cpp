@@ -162,9 +162,13 @@ void add_equilibrium_figures(Run& run) {
         if (!level.usable) break;
         nested.push_back(point_figures(*level.system, level.walk->state(), level.walk->equations(),
                                        run.junctions, run.which, level.walk->report().iteration_error));
+        const auto capacitance = static_cast<std::size_t>(PointFigure::zero_bias_capacitance);
+        nested.back().values[capacitance] = level.walk->capacitance();
+        nested.back().floors[capacitance] = 1e-13 * nested.back().values[capacitance];
     }
     const auto errors = nested_errors(nested);
-    for (const PointFigure figure : {PointFigure::built_in_potential, PointFigure::contact_potential}) {
+    for (const PointFigure figure : {PointFigure::built_in_potential, PointFigure::contact_potential,
+                                     PointFigure::zero_bias_capacitance}) {
         if (figure == PointFigure::built_in_potential && run.junctions.empty()) continue;
         Figure out;
         out.name = info(figure).name;
@@ -207,6 +211,7 @@ EndReason walk_through(Run& run) {
     bool was_down = true, limited_down = false, limited_up = false;
     for (std::size_t k = 0; k < order.size(); ++k) {
         if (run.stop()) return EndReason::interrupted;
+        if (!run.request.skip.empty() && run.request.skip[order[k]]) continue;
         const double bias = run.request.biases[order[k]];
         const bool down = bias < 0;
         if (!down && was_down && walk.voltage() != 0) walk.start_from(equilibrium, 0);
@@ -256,10 +261,14 @@ BiasOutcome run_bias_points(const Structure& structure, const BiasRequest& reque
     run.outcome.sheet_resistances = sheet_resistances(structure);
 
     run.tell(0, "laying the mesh");
-    AdaptedMesh adapted =
-        adapted_mesh(structure, request.biases, request.max_current, [&] { return run.stop(); });
+    AdaptedMesh adapted;
+    if (request.mesh)
+        adapted.mesh = *request.mesh;
+    else
+        adapted = adapted_mesh(structure, request.biases, request.max_current, [&] { return run.stop(); });
     run.meshing_iterations = adapted.iterations;
     run.meshing_rejected = adapted.rejected;
+    run.outcome.mesh = adapted.mesh;
     run.levels = nested_levels(structure, std::move(adapted.mesh), request.error_bars);
     run.profiles_empty = empty_profiles(*run.levels[0].system);
     if (!adapted.ok || !run.levels[0].walk->start()) {
@@ -277,6 +286,7 @@ BiasOutcome run_bias_points(const Structure& structure, const BiasRequest& reque
     for (const double bias : request.biases)
         if (std::abs(bias) > std::abs(farthest)) farthest = bias;
     run.which = chosen_junction(run, farthest / run.levels[0].system->thermal_voltage);
+    run.outcome.junction = run.which;
     solve_nested(run);
     add_equilibrium_figures(run);
     run.outcome.end = walk_through(run);

@@ -10,6 +10,7 @@
 
 #include "core/base/results.hpp"
 #include "core/device/structure.hpp"
+#include "core/mesh/mesh.hpp"
 
 namespace bandwright {
 
@@ -24,6 +25,10 @@ struct BiasRequest {
     std::optional<double> junction_depth;
     /// Without error bars one mesh is solved, with them three nested ones.
     bool error_bars = true;
+    /// Biases that need no solving (size biases, or empty: none); they are left out of the outcome's points.
+    std::vector<bool> skip;
+    /// Mesh to solve on in place of an adapted one.
+    std::optional<Mesh> mesh;
 };
 
 /// Why an analysis ended.
@@ -49,6 +54,9 @@ struct BiasOutcome {
     /// One sentence: where and why it stopped, empty when complete.
     std::string message;
     RunCounts counts;
+    /// The finest mesh, and the junction that per-junction figures speak of (index into junctions).
+    Mesh mesh;
+    std::size_t junction = 0;
 };
 
 /// What an analysis tells while it runs; every member may be empty.
@@ -65,7 +73,8 @@ struct Hooks {
 
 /// Solves a structure at the requested biases. Point columns: bias [V], current_density, current (with an
 /// area), junction_voltage, peak_field, peak_field_depth, extrapolated_field, depletion_top_edge,
-/// depletion_bottom_edge, depletion_width. Figures: built_in_potential, contact_potential. Errors: none for a
+/// depletion_bottom_edge, depletion_width. Figures: built_in_potential, contact_potential,
+/// zero_bias_capacitance. Errors: none for a
 /// solver that stops (see BiasOutcome::end); ContractError for a structure with complaints.
 BiasOutcome run_bias_points(const Structure& structure, const BiasRequest& request, const Hooks& hooks = {});
 
