@@ -28,7 +28,7 @@ struct CommonOptions {
     std::string output;
     std::vector<std::string> overrides;
     std::string junction, max_current;
-    bool json = false, quiet = false, resume = false;
+    bool json = false, quiet = false, resume = false, no_error_bars = false;
     /// The command line as it was given, for the result file.
     std::string command_line;
 };
@@ -47,5 +47,6 @@ Command inspect_command();
 Command ledger_command();
 Command bands_command();
 Command iv_command();
+Command handcheck_command();
 
 }  // namespace bandwright

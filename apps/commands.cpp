@@ -3,8 +3,8 @@
 namespace bandwright {
 
 const std::vector<Command>& commands() {
-    static const std::vector<Command> list{inspect_command(), ledger_command(), bands_command(),
-                                           iv_command()};
+    static const std::vector<Command> list{inspect_command(), ledger_command(), bands_command(), iv_command(),
+                                           handcheck_command()};
     return list;
 }
 

@@ -24,6 +24,9 @@ void add_common(CLI::App& app, CommonOptions& common) {
     app.add_option("--junction", common.junction, "depth of the junction that figures speak of (um)");
     app.add_option("--max-current", common.max_current,
                    "current density at which a sweep ends (A cm-2, default 1e6)");
+    app.add_flag("--no-error-bars", common.no_error_bars, "solve one mesh alone: faster, without errors");
+    app.add_flag("--resume", common.resume,
+                 "go on from the result file that an interrupted run of the same request left");
     app.add_flag("--json", common.json, "print the summary as JSON on standard output, nothing else there");
     app.add_flag("--quiet", common.quiet, "no progress, no table");
 }

@@ -87,13 +87,16 @@ void print_points(const Table& points) {
 }
 
 void print_outcome(const Results& results, const BiasOutcome& outcome, const std::filesystem::path& path,
-                   double seconds) {
+                   double seconds, const Job& job) {
     fmt::print("{}\n{} K, {} at {} bias points\n\n", results.title, results.temperature, results.command,
                results.points.rows());
-    print_points(results.points);
+    if (job.print)
+        job.print(results);
+    else
+        print_points(results.points);
     fmt::print("\n");
     for (const Figure& figure : results.figures)
-        fmt::print("  {:<20} {} {}\n", figure.name,
+        fmt::print("  {:<21} {} {}\n", figure.name,
                    std::isnan(figure.value)
                        ? figure.state
                        : value_with_error(shown(figure.value, figure.unit), shown(figure.error, figure.unit)),
@@ -143,6 +146,7 @@ Results results_of_input(const std::string& command, const CommonOptions& option
 BiasRequest request_from(const CommonOptions& options, std::vector<double> biases) {
     BiasRequest request;
     request.biases = std::move(biases);
+    request.error_bars = !options.no_error_bars;
     if (!options.junction.empty())
         request.junction_depth = option_value("--junction", options.junction, Unit::length);
     if (!options.max_current.empty()) {
@@ -156,6 +160,15 @@ BiasRequest request_from(const CommonOptions& options, std::vector<double> biase
 
 Exit solve_and_report(const std::string& command, const CommonOptions& options, const ReadResult& input,
                       const BiasRequest& request) {
+    Job job;
+    job.solve = [&](const BiasRequest& asked, const Hooks& hooks) {
+        return run_bias_points(input.structure, asked, hooks);
+    };
+    return solve_and_report(command, options, input, request, job);
+}
+
+Exit solve_and_report(const std::string& command, const CommonOptions& options, const ReadResult& input,
+                      const BiasRequest& request, const Job& job) {
     using Clock = std::chrono::steady_clock;
     const std::filesystem::path path = output_path(command, options);
     Results results = results_of_input(command, options, input);
@@ -183,9 +196,10 @@ Exit solve_and_report(const std::string& command, const CommonOptions& options, 
         write_results(path, results);
         last_checkpoint = Clock::now();
     };
-    const BiasOutcome outcome = run_bias_points(input.structure, request, hooks);
+    const BiasOutcome outcome = job.solve(request, hooks);
     bar.clear();
     take(outcome, results);
+    if (job.add) job.add(results);
     results.status = status_word(outcome.end);
     results.warnings = outcome.warnings;
     if (!outcome.message.empty()) results.warnings.push_back(outcome.message);
@@ -206,7 +220,7 @@ Exit solve_and_report(const std::string& command, const CommonOptions& options, 
     if (options.json)
         fmt::print("{}\n", summary_json(results));
     else if (!options.quiet && has_points)
-        print_outcome(results, outcome, path, seconds_since(start));
+        print_outcome(results, outcome, path, seconds_since(start), job);
     if (outcome.end == EndReason::stopped_short) return Exit::stopped_short;
     if (outcome.end == EndReason::interrupted) return Exit::interrupted;
     return Exit::done;

@@ -4,6 +4,8 @@
 // SPDX-License-Identifier: MIT
 #pragma once
 
+#include <functional>
+
 #include "apps/command.hpp"
 #include "core/base/results.hpp"
 #include "core/device/structure.hpp"
@@ -18,7 +20,19 @@ Results results_of_input(const std::string& command, const CommonOptions& option
 /// Junction, current limit and biases of a request from the common options.
 BiasRequest request_from(const CommonOptions& options, std::vector<double> biases);
 
+/// How a command solves and what it adds; all but `solve` may be empty.
+struct Job {
+    std::function<BiasOutcome(const BiasRequest&, const Hooks&)> solve;
+    /// Adds what the command found besides to the results, before they are written.
+    std::function<void(Results&)> add;
+    /// Prints the table for people in place of the usual one.
+    std::function<void(const Results&)> print;
+};
+
 /// Solves, keeps the result file up to date every 8 s, stops on SIGINT and SIGTERM, prints table or JSON.
+Exit solve_and_report(const std::string& command, const CommonOptions& options, const ReadResult& input,
+                      const BiasRequest& request, const Job& job);
+/// The same with run_bias_points.
 Exit solve_and_report(const std::string& command, const CommonOptions& options, const ReadResult& input,
                       const BiasRequest& request);
 

@@ -107,6 +107,8 @@ struct Results {
     Table points;
     Profiles profiles;
     Ledger ledger;
+    /// Sentences that say what the numbers mean.
+    std::vector<std::string> readings;
     std::vector<std::string> warnings;
     std::vector<MeasuredPoints> measured;
 };

@@ -84,6 +84,7 @@ std::string summary_json(const Results& results) {
         document["points"] = points;
         document["units"] = units;
     }
+    if (!results.readings.empty()) document["readings"] = results.readings;
     document["warnings"] = results.warnings;
     if (results.command == "ledger") document["ledger"] = ledger_array(results.ledger);
     return document.dump(1);
