@@ -2,14 +2,17 @@
 
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <atomic>
 #include <chrono>
 #include <cmath>
 #include <csignal>
 #include <filesystem>
+#include <optional>
 
 #include "apps/console.hpp"
 #include "apps/options.hpp"
+#include "io/results/earlier_run.hpp"
 #include "io/results/summary.hpp"
 #include "io/results/write_results.hpp"
 
@@ -60,6 +63,20 @@ void take(const BiasOutcome& outcome, Results& results) {
     results.sheet_resistances = outcome.sheet_resistances;
     results.points = outcome.points;
     results.profiles = outcome.profiles;
+}
+
+// What an interrupted run of the same request left, when there is something.
+std::optional<EarlierRun> earlier_run(const std::filesystem::path& path, const Results& results) {
+    if (!std::filesystem::exists(path)) {
+        warn(fmt::format("--resume: there is no {} yet; the run starts from the beginning", path.string()));
+        return std::nullopt;
+    }
+    EarlierRun earlier = read_earlier_run(path);
+    if (earlier.structure_used != results.structure_used || earlier.command != results.command)
+        throw InputError("", {{"--resume", fmt::format("{} is the result of another structure or command; give "
+                                                       "another --output, or remove it",
+                                                       path.string())}});
+    return earlier;
 }
 
 // The columns a person wants beside each other.
@@ -161,6 +178,7 @@ BiasRequest request_from(const CommonOptions& options, std::vector<double> biase
 Exit solve_and_report(const std::string& command, const CommonOptions& options, const ReadResult& input,
                       const BiasRequest& request) {
     Job job;
+    job.can_resume = true;
     job.solve = [&](const BiasRequest& asked, const Hooks& hooks) {
         return run_bias_points(input.structure, asked, hooks);
     };
@@ -184,21 +202,33 @@ Exit solve_and_report(const std::string& command, const CommonOptions& options, 
     const auto seconds_since = [](Clock::time_point then) {
         return std::chrono::duration<double>(Clock::now() - then).count();
     };
+    BiasRequest asked = request;
+    std::optional<EarlierRun> earlier;
+    if (options.resume && job.can_resume) earlier = earlier_run(path, results);
+    if (earlier)
+        for (const double bias : request.biases)
+            asked.skip.push_back(std::find(earlier->biases.begin(), earlier->biases.end(), bias) !=
+                                 earlier->biases.end());
+    const auto take_all = [&](const BiasOutcome& outcome) {
+        take(outcome, results);
+        if (earlier && !results.profiles.depth_um.empty())
+            merge_earlier_run(*earlier, request.biases, results.points, results.profiles);
+    };
     Hooks hooks;
     hooks.progress = [&](double share, const std::string& text) { bar.show(share, text); };
     hooks.should_stop = [] { return stop_asked.load(); };
     hooks.wants_checkpoint = [&] { return seconds_since(last_checkpoint) >= checkpoint_seconds; };
     hooks.checkpoint = [&](const BiasOutcome& partial) {
-        take(partial, results);
+        take_all(partial);
         results.status = "running";
         results.warnings = partial.warnings;
         results.warnings.insert(results.warnings.end(), caution.begin(), caution.end());
         write_results(path, results);
         last_checkpoint = Clock::now();
     };
-    const BiasOutcome outcome = job.solve(request, hooks);
+    const BiasOutcome outcome = job.solve(asked, hooks);
     bar.clear();
-    take(outcome, results);
+    take_all(outcome);
     if (job.add) job.add(results);
     results.status = status_word(outcome.end);
     results.warnings = outcome.warnings;

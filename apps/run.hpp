@@ -27,6 +27,8 @@ struct Job {
     std::function<void(Results&)> add;
     /// Prints the table for people in place of the usual one.
     std::function<void(const Results&)> print;
+    /// Whether points of an interrupted run can be taken over as they are.
+    bool can_resume = false;
 };
 
 /// Solves, keeps the result file up to date every 8 s, stops on SIGINT and SIGTERM, prints table or JSON.

@@ -250,6 +250,33 @@ std::string Hdf5File::attribute(const std::string& name) const {
     return value.substr(0, value.find('\0'));
 }
 
+std::vector<std::string> Hdf5File::names() const {
+    std::vector<std::string> list;
+    const auto add = [](hid_t, const char* name, const H5L_info_t*, void* data) -> herr_t {
+        static_cast<std::vector<std::string>*>(data)->emplace_back(name);
+        return 0;
+    };
+    hsize_t index = 0;
+    if (H5Literate(id_, H5_INDEX_NAME, H5_ITER_NATIVE, &index, add, &list) < 0)
+        fail(path_, "its datasets cannot be listed");
+    return list;
+}
+
+std::string Hdf5File::first_scale(const std::string& name) const {
+    const Handle dataset(checked(H5Dopen2(id_, name.c_str(), H5P_DEFAULT), path_, "there is no " + name),
+                         H5Dclose);
+    std::string scale;
+    const auto take = [](hid_t, unsigned, hid_t found, void* data) -> herr_t {
+        std::string text(256, '\0');
+        const ssize_t length = H5Iget_name(found, text.data(), text.size());
+        if (length > 1) *static_cast<std::string*>(data) = text.substr(1, static_cast<std::size_t>(length) - 1);
+        return 1;
+    };
+    if (H5Iget_type(dataset) == H5I_DATASET && H5DSget_num_scales(dataset, 0) > 0)
+        H5DSiterate_scales(dataset, 0, nullptr, take, &scale);
+    return scale;
+}
+
 void Hdf5File::close() {
     if (id_ >= 0 && H5Fclose(std::exchange(id_, -1)) < 0) fail(path_, "the file cannot be closed");
 }

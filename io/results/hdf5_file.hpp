@@ -43,6 +43,10 @@ class Hdf5File {
     std::vector<std::size_t> lengths(const std::string& name) const;
     std::string text(const std::string& name) const;
     std::string attribute(const std::string& name) const;
+    /// Names of all datasets.
+    std::vector<std::string> names() const;
+    /// Name of the scale of a dataset's first dimension; empty when it has none.
+    std::string first_scale(const std::string& name) const;
 
     /// Closes and reports trouble; the destructor closes without a word. Errors: FileError.
     void close();
