@@ -53,6 +53,9 @@ double capped(double change, double cap) {
 
 // A density that is wrong by this factor shows a step too far; the next iterations would be wasted.
 constexpr double run_away = 1e60;
+// So many iterations and still so far away: a shorter way from the last solution is cheaper.
+constexpr int soon = 15;
+constexpr double far_away = 100;
 
 // A step above this has not converged, whatever the balances say.
 constexpr double most_at_rounding = 1e-4;
@@ -82,7 +85,7 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
     const std::size_t size = 3 * system.nodes();
     require(state.unknowns.size() == size, "a state does not belong to its mesh");
     const double drop = drop_per_flux(system);
-    const bool bordered = drop > 0;
+    const bool bordered = drop > 0 || options.flux;
 
     NewtonReport report;
     State& trial = work.trial;
@@ -118,7 +121,8 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
         double border = 0;
         if (bordered) {
             work.current = terminal_current(system, trial, work.equations);
-            border = trial.contact_voltage + drop * work.current.flux - applied_voltage;
+            border = options.flux ? work.current.flux / *options.flux - 1
+                                  : trial.contact_voltage + drop * work.current.flux - applied_voltage;
         }
         judge();
         // KINSOL sees the size of the last step: whether it has converged is decided above.
@@ -140,8 +144,10 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
             const double along = terminal_derivative(system, work.equations, work.current, d);
             const double slope = terminal_derivative(system, work.equations, work.current, z);
             change_of_contact =
-                (applied_voltage - trial.contact_voltage - drop * (work.current.flux + along)) /
-                (1 + drop * slope);
+                options.flux
+                    ? (*options.flux - work.current.flux - along) / slope
+                    : (applied_voltage - trial.contact_voltage - drop * (work.current.flux + along)) /
+                          (1 + drop * slope);
             for (std::size_t k = 0; k < size; ++k) d[k] += change_of_contact * z[k];
         }
         double worst = 0;
@@ -171,6 +177,7 @@ NewtonReport NewtonSolver::solve(State& state, double applied_voltage, const New
         set_contact(system.nodes() - 1, system.bottom);
         x[size] = change_of_contact;
         report.steps.push_back(worst);
+        if (report.iterations >= soon && worst > far_away) return false;
         return worst < run_away;
     };
     const std::string words = work.kinsol.solve(unknowns, options.most_iterations, residual, step);

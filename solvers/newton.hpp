@@ -3,6 +3,7 @@
 #pragma once
 
 #include <memory>
+#include <optional>
 #include <string>
 #include <vector>
 
@@ -48,6 +49,8 @@ struct NewtonOptions {
     double cap = 10;
     /// Converged when the step that would come next is predicted below this.
     double tolerance = 1e-10;
+    /// Hold the terminal flux J/q [m^-2 s^-1] at this and find the voltage; the applied one is not looked at.
+    std::optional<double> flux;
 };
 
 /// Solves one system again and again: keeps its workspace and last factorisation.

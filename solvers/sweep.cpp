@@ -70,7 +70,7 @@ bool BiasWalk::solve(State& guess, double applied_voltage, const NewtonOptions& 
 
 BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux,
                                     const std::function<bool()>& should_stop) {
-    double step = std::max(step_, std::abs(target - voltage_) < step_ ? step_ : 0.0);
+    double step = step_, ceiling = most_step;
     while (voltage_ != target) {
         if (should_stop && should_stop()) return Arrival::interrupted;
         const double remaining = target - voltage_;
@@ -88,20 +88,64 @@ BiasWalk::Arrival BiasWalk::walk_to(double target, double most_flux,
         if (!is_fresh_) {
             ++rejected_;
             step = 0.5 * std::min(step, std::abs(change));
-            if (step < least_step) {
-                message_ = describe_failure(solver_.system(), next, report_);
-                return Arrival::stopped;
-            }
+            ceiling = std::abs(change);  // what has just failed is not tried again at once
+            if (step < least_step) return climb(target, most_flux, should_stop);
             continue;
         }
         state_ = std::move(trial);
         voltage_ = next;
         if (report_.iterations <= easy_iterations)
-            step = std::min(most_step, std::max(step, 2 * std::abs(change)));
+            step = std::min(0.7 * ceiling, std::max(step, 2 * std::abs(change)));
+        ceiling = std::min(1.3 * ceiling, 2 * most_step);
         step_ = step;
         if (std::abs(flux()) >= most_flux) return Arrival::current_limit;
     }
     return Arrival::arrived;
+}
+
+BiasWalk::Arrival BiasWalk::climb(double target, double most_flux, const std::function<bool()>& should_stop) {
+    constexpr double least_growth = 1e-5, most_growth = 1;
+    const double start = voltage_, direction = target > voltage_ ? 1 : -1;
+    const double drop =
+        solver_.system().series_resistance * constants::elementary_charge / solver_.system().thermal_voltage;
+    const std::string failure = describe_failure(solver_.system(), start, report_);
+    double growth = 0.1;
+    for (int count = 0; count < 4000; ++count) {
+        if (should_stop && should_stop()) return Arrival::interrupted;
+        const double present = flux(), wanted = present * (1 + growth);
+        if (!(present * direction > 0)) break;
+        State trial = state_;
+        NewtonOptions options;
+        options.flux = wanted;
+        is_seen_ = is_fresh_ = solve(trial, voltage_, options);
+        if (!is_fresh_) {
+            ++rejected_;
+            growth *= 0.5;
+            if (growth < least_growth) break;
+            continue;
+        }
+        const double reached = trial.contact_voltage + drop * wanted;
+        if ((reached - target) * direction > 0 && std::abs(wanted) < most_flux) {
+            // The voltage has passed the target on the other branch: solve there, or come nearer first.
+            State there = trial;
+            if (drop == 0) there.contact_voltage = target;
+            is_seen_ = is_fresh_ = solve(there, target, {});
+            if (is_fresh_) {
+                state_ = std::move(there);
+                voltage_ = target;
+                return Arrival::arrived;
+            }
+            growth *= 0.5;
+            if (growth < least_growth) break;
+            continue;
+        }
+        if (report_.iterations <= easy_iterations) growth = std::min(most_growth, 1.5 * growth);
+        state_ = std::move(trial);
+        voltage_ = reached;
+        if (std::abs(wanted) >= most_flux) return Arrival::current_limit;
+    }
+    message_ = failure;
+    return Arrival::stopped;
 }
 
 const Equations& BiasWalk::equations() {

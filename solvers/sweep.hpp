@@ -23,8 +23,10 @@ class BiasWalk {
 
     enum class Arrival { arrived, stopped, interrupted, current_limit };
     /// Walks to an applied voltage [kT/q]. Doubles its step when Newton converges easily; halves it and
-    /// restores the last state when it does not; gives up below 1e-4 kT/q, and says where in message().
-    /// most_flux: |J|/q at which the walk ends on the way [m^-2 s^-1].
+    /// restores the last state when it does not. Below 1e-4 kT/q the curve is taken to turn back (a stack of
+    /// junctions that fires): the current is raised instead until the voltage has passed the target. Gives up
+    /// where that stalls too, and says where in message(). most_flux: |J|/q at which the walk ends on the way
+    /// [m^-2 s^-1].
     Arrival walk_to(double applied_voltage, double most_flux, const std::function<bool()>& should_stop = {});
 
     const State& state() const { return state_; }
@@ -34,8 +36,8 @@ class BiasWalk {
     /// Equations of state(), evaluated again when needed.
     const Equations& equations();
     double flux();
-    /// Charge of all holes per voltage between the contacts at the present state [F/m^2], from the tangent of the
-    /// solved system; the charge of all electrons gives the same. Quasi-static: at equilibrium it is the
+    /// Charge of all holes per voltage between the contacts at the present state [F/m^2], from the tangent of
+    /// the solved system; the charge of all electrons gives the same. Quasi-static: at equilibrium it is the
     /// capacitance of the depletion layers.
     double capacitance();
 
@@ -45,6 +47,8 @@ class BiasWalk {
 
   private:
     bool solve(State& guess, double applied_voltage, const NewtonOptions& options);
+    // Where the voltage turns back: raises the current instead until the voltage has passed the target.
+    Arrival climb(double target, double most_flux, const std::function<bool()>& should_stop);
 
     NewtonSolver solver_;
     State state_;

@@ -262,6 +262,13 @@ std::vector<std::string> Hdf5File::names() const {
     return list;
 }
 
+bool Hdf5File::is_text(const std::string& name) const {
+    const Handle dataset(checked(H5Dopen2(id_, name.c_str(), H5P_DEFAULT), path_, "there is no " + name),
+                         H5Dclose);
+    const Handle type(H5Dget_type(dataset), H5Tclose);
+    return H5Tget_class(type) == H5T_STRING;
+}
+
 std::string Hdf5File::first_scale(const std::string& name) const {
     const Handle dataset(checked(H5Dopen2(id_, name.c_str(), H5P_DEFAULT), path_, "there is no " + name),
                          H5Dclose);
@@ -269,7 +276,8 @@ std::string Hdf5File::first_scale(const std::string& name) const {
     const auto take = [](hid_t, unsigned, hid_t found, void* data) -> herr_t {
         std::string text(256, '\0');
         const ssize_t length = H5Iget_name(found, text.data(), text.size());
-        if (length > 1) *static_cast<std::string*>(data) = text.substr(1, static_cast<std::size_t>(length) - 1);
+        if (length > 1)
+            *static_cast<std::string*>(data) = text.substr(1, static_cast<std::size_t>(length) - 1);
         return 1;
     };
     if (H5Iget_type(dataset) == H5I_DATASET && H5DSget_num_scales(dataset, 0) > 0)

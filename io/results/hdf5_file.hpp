@@ -45,6 +45,8 @@ class Hdf5File {
     std::string attribute(const std::string& name) const;
     /// Names of all datasets.
     std::vector<std::string> names() const;
+    /// Whether a dataset holds text.
+    bool is_text(const std::string& name) const;
     /// Name of the scale of a dataset's first dimension; empty when it has none.
     std::string first_scale(const std::string& name) const;
 
