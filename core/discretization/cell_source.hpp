@@ -44,8 +44,9 @@ inline SourceRate half_rate(const EndCoefficients& end, const SourceState& s) {
     const double n1 = end.n1 * s.gamma_n, p1 = end.p1 * s.gamma_p;
     const double dn1 = n1 * (s.ratio_n - 1), dp1 = p1 * (s.ratio_p - 1);  // d(ln gamma)/d(eta) = ratio - 1
     const double inverse = 1 / (end.tau_p * (s.n + n1) + end.tau_n * (s.p + p1));
-    const double by_n = end.auger_n * dn - end.srh * inverse * inverse * end.tau_p * (dn + dn1),
-                 by_p = end.auger_p * dp - end.srh * inverse * inverse * end.tau_n * (dp + dp1);
+    // inverse * tau is large where carriers are few, inverse * density is not: no square of the former.
+    const double by_n = end.auger_n * dn - end.srh * (inverse * end.tau_p) * (inverse * (dn + dn1)),
+                 by_p = end.auger_p * dp - end.srh * (inverse * end.tau_n) * (inverse * (dp + dp1));
     const double factor = end.auger_n * s.n + end.auger_p * s.p + end.radiative + end.srh * inverse;
     return {product * factor, product_by_psi * factor + product * (by_n - by_p),
             product_by_phi_n * factor - product * by_n, product_by_phi_p * factor + product * by_p};
