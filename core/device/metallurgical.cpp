@@ -68,19 +68,26 @@ std::vector<Metallurgical> metallurgical_junctions(const Structure& structure) {
                 Metallurgical junction;
                 junction.p_above = before->net < 0;
                 const bool across = before->layer != layer;
-                if (gap) {
-                    junction.depth = 0.5 * (before->x + x);
-                } else if (across) {
-                    junction.depth = boundaries[layer];
-                } else {
+                const bool before_is_p = before->net < 0;
+                // Where the doping stops having the sign it had, and where it begins to have the other.
+                const auto boundary = [&](const auto& is_past) {
                     double from = before->x, to = x;
-                    for (int step = 0; step < 200 && from < to; ++step) {
+                    for (int step = 0; step < 200; ++step) {
                         const double middle = 0.5 * (from + to);
                         if (middle <= from || middle >= to) break;
-                        const double value = doping_at(structure, layer, middle).net();
-                        ((value < 0) == (before->net < 0) ? from : to) = middle;
+                        (is_past(doping_at(structure, layer, middle).net()) ? to : from) = middle;
                     }
-                    junction.depth = 0.5 * (from + to);
+                    return 0.5 * (from + to);
+                };
+                if (across) {
+                    junction.depth = gap ? 0.5 * (before->x + x) : boundaries[layer];
+                } else {
+                    const double end = boundary(
+                                     [&](double net) { return net == 0 || (net < 0) != before_is_p; }),
+                                 start = boundary(
+                                     [&](double net) { return net != 0 && (net < 0) != before_is_p; });
+                    junction.depth = 0.5 * (end + start);
+                    gap = start - end > 1e-9 * boundaries.back();  // not where a sample hits the zero itself
                     // A jump is where the profile says it is, to the last digit.
                     for (const DopingEntry& entry : structure.doping)
                         for (const double point : breakpoints(entry.shape))
@@ -88,8 +95,9 @@ std::vector<Metallurgical> metallurgical_junctions(const Structure& structure) {
                                 junction.depth = point;
                     const double reach =
                         std::min(junction.depth - boundaries[layer], boundaries[layer + 1] - junction.depth);
-                    junction.gradient =
-                        gradient_at(structure, layer, junction.depth, std::min(reach, x - before->x));
+                    if (!gap)
+                        junction.gradient =
+                            gradient_at(structure, layer, junction.depth, std::min(reach, x - before->x));
                 }
                 junctions.push_back(junction);
             }

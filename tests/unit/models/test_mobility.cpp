@@ -100,7 +100,11 @@ TEST(SheetResistance, of_diffused_layers_equals_its_definition) {
         {"B", R"("kind":"gaussian","peak":"1e19 cm-3","depth":"0 um","straggle":"0.26903980 um")",
          "1e16 cm-3", 211.375},
         {"P", R"("kind":"gaussian","peak":"1e19 cm-3","depth":"0 um","straggle":"0.69898820 um")",
-         "1e15 cm-3", 49.8705}};
+         "1e15 cm-3", 49.8705},
+        {"B", R"("kind":"gaussian","peak":"1e20 cm-3","depth":"0 um","straggle":"0.20839373 um")",
+         "1e15 cm-3", 44.0734},
+        {"B", R"("kind":"erfc","surface":"1e20 cm-3","length":"0.32016256 um")", "1e15 cm-3", 61.1131},
+        {"P", R"("kind":"erfc","surface":"1e20 cm-3","length":"0.32016256 um")", "1e15 cm-3", 39.9994}};
     for (const Row& row : rows) {
         const std::string other = std::string(row.dopant) == "B" ? "P" : "B";
         const std::string text =
