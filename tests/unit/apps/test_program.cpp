@@ -71,7 +71,7 @@ TEST(Program, suggests_the_option_and_the_command_that_were_meant) {
     const TemporaryFolder folder;
     EXPECT_EQ(run_in(folder, program + " ivv").err,
               "bandwright: there is no command \"ivv\"; did you mean \"iv\"? The commands are inspect, "
-              "ledger, bands, iv\n");
+              "ledger, bands, iv, handcheck\n");
     EXPECT_EQ(run_in(folder, program + " iv d.json --form 3").err,
               "bandwright: iv has no option \"--form\"; did you mean \"--from\"?\n");
 }

@@ -61,7 +61,7 @@ TEST(Messages, misspelt_material) {
 TEST(Messages, misspelt_doping_kind) {
     EXPECT_EQ(
         message_for(with(good, "uniform", "unifrom")),
-        R"(diode.json: /doping/0/kind: there is no kind of doping "unifrom"; did you mean "uniform"? There are: uniform, step, gaussian, erfc, exponential, linear, measured)");
+        R"(diode.json: /doping/0/kind: there is no kind of doping "unifrom"; did you mean "uniform"? There are: uniform, step, gaussian, erfc, exponential, linear, measured, implant)");
 }
 
 TEST(Messages, unknown_layer_in_a_doping) {
