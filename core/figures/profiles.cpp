@@ -108,6 +108,8 @@ void append_profiles(const DiscreteSystem& system, const State& state, const Equ
     const CurrentProfile currents = current_profile(system, equations, current);
     const double bottom = state.psi(system.nodes() - 1);
     const double kT = system.thermal_voltage, q = constants::elementary_charge;
+    const std::vector<double>& net_doping = profiles.variables[2].values;  // in the order of empty_profiles()
+    std::size_t index = 0;
     for (const Place& place : places(system)) {
         const std::size_t node = place.node();
         const EndCoefficients& end = system.of_cell(place.cell);
@@ -117,9 +119,7 @@ void append_profiles(const DiscreteSystem& system, const State& state, const Equ
         const double half = 0.5 * system.mesh.width(place.cell) * (place.right ? 1 : -1);
         const double vacuum = -state.psi(node) * kT;
         const double conduction = vacuum - end.affinity_energy, valence = conduction - end.bandgap;
-        // The carried-on numbers are means over a half cell; the pointwise doping belongs to the place
-        // itself.
-        const double net = doping_of(system, place).net();
+        const double net = net_doping[index++];  // at the place itself, not a cell's end value
         const double values[] = {conduction,
                                  valence,
                                  0.5 * (conduction + valence) + 0.5 * kT * (end.log_Nv - end.log_Nc),
