@@ -18,6 +18,11 @@ constexpr double rounding_share = 1e-10;
 // Near the smallest double, values lose digits and so their smoothness: such a difference is none.
 constexpr double nothing = 1e-300;
 
+// Points closer than this share of the interval count as one.
+constexpr double merging_share = 1e-12;
+// Neighbouring pieces start out with widths in a ratio of about this at most.
+constexpr double growth = 4;
+
 struct Rule {
     std::array<double, order> node{}, weight{};
 };
@@ -41,6 +46,21 @@ Rule gauss_legendre() {
         rule.weight[static_cast<std::size_t>(k)] = 2 / ((1 - x * x) * slope * slope);
     }
     return rule;
+}
+
+/// Cuts with more between them, so that a piece is at most growth times as wide as the one before it: what is
+/// narrow near close points is not stepped over beyond them.
+std::vector<double> graded(const std::vector<double>& cuts) {
+    std::vector<double> result{cuts[0], cuts[1]};
+    for (std::size_t k = 2; k < cuts.size(); ++k) {
+        double width = result.back() - result[result.size() - 2];
+        while (cuts[k] - result.back() > (1 + growth) * width) {
+            width *= growth;
+            result.push_back(result.back() + width);
+        }
+        result.push_back(cuts[k]);
+    }
+    return result;
 }
 
 /// Sums of f and of |f| over a piece.
@@ -89,7 +109,19 @@ double integral(const std::function<double(double)>& f, double low, double high,
     for (const double point : points)
         if (point > low && point < high) cuts.push_back(point);
     std::ranges::sort(cuts);
-    cuts.erase(std::unique(cuts.begin(), cuts.end()), cuts.end());
+    const double closest = merging_share * (high - low);
+    cuts.erase(std::unique(cuts.begin(), cuts.end(), [=](double a, double b) { return b - a <= closest; }),
+               cuts.end());
+    cuts.back() = high;
+    // Pieces grow from either side; a mirrored list lets one function serve both.
+    const auto mirror = [&cuts] {
+        std::ranges::reverse(cuts);
+        for (double& cut : cuts) cut = -cut;
+    };
+    cuts = graded(cuts);
+    mirror();
+    cuts = graded(cuts);
+    mirror();
     Integral pieces{f, tolerance};
     std::vector<Sums> sums;
     for (std::size_t k = 0; k + 1 < cuts.size(); ++k) {

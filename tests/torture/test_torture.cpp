@@ -13,24 +13,13 @@
 #include "io/results/hdf5_file.hpp"
 #include "io/results/write_results.hpp"
 #include "solvers/analyses/bias_points.hpp"
+#include "tests/support/halved_mesh.hpp"
 #include "tests/support/temporary_folder.hpp"
 #include "tests/support/torture_structure.hpp"
 
 using namespace bandwright;
 
 namespace {
-
-Mesh halved(const Mesh& mesh) {
-    Mesh fine;
-    for (std::size_t cell = 0; cell < mesh.cells(); ++cell) {
-        fine.position.push_back(mesh.position[cell]);
-        fine.position.push_back(0.5 * (mesh.position[cell] + mesh.position[cell + 1]));
-        fine.layer_of_cell.insert(fine.layer_of_cell.end(), 2, mesh.layer_of_cell[cell]);
-    }
-    fine.position.push_back(mesh.position.back());
-    for (const std::size_t node : mesh.fixed) fine.fixed.push_back(2 * node);
-    return fine;
-}
 
 struct Tally {
     int points = 0, limited = 0, judged = 0, within = 0;

@@ -71,7 +71,7 @@ TEST(TabulatedProfile, has_the_second_derivative_of_the_profile) {
         const double bend =
             (std::log(value(table, x + h)) - 2 * std::log(value(table, x)) + std::log(value(table, x - h))) /
             (h * h);
-        // Rounding in ln N of about 50 over h^2 leaves 1e-7 of 1/s^2.
+        // The allowed error of the table, 1e-11, over h^2 is 1e-5 of 1/s^2.
         EXPECT_NEAR(bend * s * s, -1, 2e-5) << z;
     }
 }
