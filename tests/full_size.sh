@@ -17,4 +17,4 @@ folder=$(mktemp -d)
 trap 'rm -rf "$folder"' EXIT
 cd "$folder"
 /usr/bin/python3 "$root/tests/torture/kill_and_resume.py" "$program" "$root/tests/torture/floating-stack.json" KILL 30 \
-  --from=0 --to=-40 --points=2600
+  --from=0 --to=-550 --points=420

@@ -12,7 +12,7 @@ TEST(Resume, after_an_interruption_gives_the_file_of_an_uninterrupted_run) {
     const std::string torture = std::string(SOURCE_ROOT) + "/tests/torture/";
     const Ran ran =
         run_in(folder, std::string(PYTHON) + " " + torture + "kill_and_resume.py " + PROGRAM + " " + torture +
-                           "floating-stack.json INT 3 --from=0 --to=-40 --points=60");
+                           "floating-stack.json INT 3 --from=0 --to=-20 --points=16");
     EXPECT_EQ(ran.status, 0) << ran.out << ran.err;
     EXPECT_NE(ran.out.find("survivors hold points"), std::string::npos) << ran.out;
     std::printf("%s", ran.out.c_str());
