@@ -122,7 +122,7 @@ std::vector<SheetLine> sheet_resistances(const Structure& structure) {
         const auto over = [&](const auto& f) { return integral(f, line.from, line.to, stack.cuts); };
         const double net = over([&](double x) { return stack.net(x); });
         if (net != 0) {
-            line.type = net > 0 ? "n" : "p";
+            line.type = std::string(1, net > 0 ? 'n' : 'p');
             line.dose = std::abs(net);
             const double conductance = over([&](double x) { return stack.conductivity(x); });
             if (conductance > 0) line.value = 1 / conductance;

@@ -7,6 +7,7 @@
 #include <fmt/format.h>
 #include <cmath>
 #include <cstdlib>
+#include <ctime>
 
 #include "core/base/error.hpp"
 #include "io/input/read_structure.hpp"
@@ -24,7 +25,15 @@ namespace {
 struct Tally {
     int points = 0, limited = 0, judged = 0, within = 0;
     std::vector<std::string> failures;
+
+    void fail(std::string text) {
+        std::printf("  FAILED %s\n", text.c_str());
+        std::fflush(stdout);
+        failures.push_back(std::move(text));
+    }
 };
+
+constexpr double most_seconds = 90;  // of processor time a structure and both its meshes
 
 void judge(const std::string& place, const BiasOutcome& coarse, const BiasOutcome& fine, Tally& tally) {
     for (const Column& column : coarse.points.columns) {
@@ -44,7 +53,7 @@ void judge(const std::string& place, const BiasOutcome& coarse, const BiasOutcom
             const double ulp = 4.5e-16 * std::abs(value);
             tally.within += difference <= error + ulp;
             if (difference > 10 * error + ulp)
-                tally.failures.push_back(
+                tally.fail(
                     fmt::format("{}, {:.4g} V: {} is {:.8g} +- {:.2g}, and {:.8g} on half the "
                                 "widths",
                                 place, bias, column.name, value, error, limit));
@@ -61,7 +70,7 @@ void check_file(const std::string& place, const std::filesystem::path& path, Tal
                                     name != "current_density" && name != "junction_voltage";
         for (const double value : file.values(name))
             if (std::isinf(value) || (std::isnan(value) && !may_be_missing)) {
-                tally.failures.push_back(place + ": " + name + " holds " + std::to_string(value));
+                tally.fail(place + ": " + name + " holds " + std::to_string(value));
                 break;
             }
     }
@@ -71,8 +80,9 @@ void check_file(const std::string& place, const std::filesystem::path& path, Tal
 
 TEST(Torture, solves_every_bias_or_ends_at_the_current_limit) {
     unsigned from = 1, to = 40;
-    if (const char* wanted = std::getenv("BANDWRIGHT_TORTURE_SEEDS"))
+    if (const char* wanted = std::getenv("BANDWRIGHT_TORTURE_SEEDS")) {
         ASSERT_EQ(std::sscanf(wanted, "%u-%u", &from, &to), 2) << "FROM-TO is wanted";
+    }
     Tally tally;
     for (unsigned seed = from; seed <= to; ++seed) {
         const TortureCase made = torture_case(seed);
@@ -83,16 +93,24 @@ TEST(Torture, solves_every_bias_or_ends_at_the_current_limit) {
         try {
             input = read_structure_text(made.structure, "torture.json", folder.path());
         } catch (const std::exception& trouble) {
-            tally.failures.push_back(place + ": " + trouble.what());
+            tally.fail(place + ": " + trouble.what());
             continue;
         }
         BiasRequest request;
         request.biases = {0, made.biases[0], made.biases[1]};
-        const BiasOutcome outcome = run_bias_points(input.structure, request);
+        const auto start = std::clock();
+        Hooks hooks;
+        hooks.should_stop = [&] {
+            return static_cast<double>(std::clock() - start) / CLOCKS_PER_SEC > most_seconds;
+        };
+        const BiasOutcome outcome = run_bias_points(input.structure, request, hooks);
         tally.points += 3;
         const auto missing = static_cast<int>(request.biases.size() - outcome.points.rows());
-        if (outcome.end == EndReason::stopped_short) {
-            tally.failures.push_back(place + ": " + outcome.message);
+        if (outcome.end == EndReason::stopped_short || outcome.end == EndReason::interrupted) {
+            tally.fail(place + ": " +
+                       (outcome.end == EndReason::interrupted
+                            ? fmt::format("not done after {} s", most_seconds)
+                            : outcome.message));
             continue;
         }
         tally.limited += missing;
@@ -103,9 +121,11 @@ TEST(Torture, solves_every_bias_or_ends_at_the_current_limit) {
         finer.biases = outcome.points.columns.front().values;
         finer.mesh = halved(outcome.mesh);
         finer.error_bars = false;
-        const BiasOutcome fine = run_bias_points(input.structure, finer);
+        const BiasOutcome fine = run_bias_points(input.structure, finer, hooks);
         if (fine.points.rows() < outcome.points.rows() && fine.end != EndReason::current_limit)
-            tally.failures.push_back(place + ", half the widths: " + fine.message);
+            tally.fail(place + ", half the widths: " +
+                       (fine.end == EndReason::interrupted ? fmt::format("not done after {} s", most_seconds)
+                                                           : fine.message));
         judge(place, outcome, fine, tally);
         Results results;
         results.points = outcome.points;
@@ -115,7 +135,7 @@ TEST(Torture, solves_every_bias_or_ends_at_the_current_limit) {
             write_results(folder.path() / "r.h5", results);
             check_file(place, folder.path() / "r.h5", tally);
         } catch (const std::exception& trouble) {
-            tally.failures.push_back(place + ": " + trouble.what());
+            tally.fail(place + ": " + trouble.what());
         }
     }
     std::printf(
