@@ -130,3 +130,16 @@ TEST(Sizes, are_printed) {
         }
     SUCCEED();
 }
+
+TEST(Headers, name_tests_that_exist) {
+    std::set<std::string> there;
+    for (const auto& entry : fs::recursive_directory_iterator(root / "tests"))
+        there.insert(entry.path().filename().string());
+    const std::regex cited(R"(test_[a-z_]+\.cpp)");
+    for (const char* folder : {"core", "solvers", "io", "apps"})
+        for (const fs::path& path : sources(folder)) {
+            const std::string text = read(path);
+            for (std::sregex_iterator at(text.begin(), text.end(), cited), end; at != end; ++at)
+                EXPECT_TRUE(there.contains(at->str())) << path << " names " << at->str();
+        }
+}
