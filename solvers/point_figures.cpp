@@ -61,7 +61,7 @@ PointFigures point_figures(const DiscreteSystem& system, const State& state, con
         set(PointFigure::peak_field_depth, junction.peak_depth,
             depth * 1e-15 + junction.peak_depth_resolution);
         set(PointFigure::extrapolated_field, magnitude(junction.extrapolated_field),
-            field * (relative + 1e-12));
+            field * (relative + 1e-12) + junction.extrapolated_doubt);
         set(PointFigure::depletion_top_edge, junction.top_edge, depth * 1e-15);
         set(PointFigure::depletion_bottom_edge, junction.bottom_edge, depth * 1e-15);
         if (junction.top_edge && junction.bottom_edge)

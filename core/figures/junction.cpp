@@ -183,6 +183,15 @@ void find_peak(const View& v, std::size_t start_node, JunctionFigures& figures) 
     }
     figures.peak_field = field_in_cell(v.system, material_cell, peak);
     figures.peak_depth = v.x(best);
+    // Where the field is flat, every node whose field differs by less than fields are known may be the
+    // peak's.
+    const double nearly = std::abs(peak) * (1 - 0.001 * v.system.structure.mesh.tolerance);
+    std::size_t first = best, last = best;
+    while (first > 0 && size(first - 1) >= nearly) --first;
+    while (last + 1 < v.system.nodes() && size(last + 1) >= nearly) ++last;
+    if (first < best || last > best)
+        figures.peak_depth_resolution =
+            std::max({figures.peak_depth_resolution, v.x(best) - v.x(first), v.x(last) - v.x(best)});
 }
 
 // Net doping summed from a node to another [m^-2], dose of whole cells.
@@ -224,7 +233,7 @@ void find_extrapolated(const View& v, const std::vector<Metallurgical>& junction
     const std::size_t junction_node = light == 1 ? region.first : region.last;
     double fewest = few_carriers;
     std::optional<double> value;
-    double dose = 0;
+    double dose = 0, doubt = 0;
     std::size_t node = junction_node;
     while (light == 1 ? node < region.last : node > region.first) {
         const std::size_t cell = light == 1 ? node : node - 1;
@@ -232,15 +241,25 @@ void find_extrapolated(const View& v, const std::vector<Metallurgical>& junction
         dose += dose_between(v, node, next);
         const EndState s = light == 1 ? v.equations.right(cell) : v.equations.left(cell);
         const double net = std::abs(light == 1 ? v.system.net_right[cell] : v.system.net_left[cell]);
+        if (value && !((s.n + s.p) < 0.5 * net)) break;  // past this junction's own depleted layer
         if (net > 0 && (s.n + s.p) / net < fewest) {
             fewest = (s.n + s.p) / net;
             value = v.displacement[next] - dose;
+            doubt = fewest * std::abs(dose);
         }
         node = next;
     }
     if (!value) return;
     const std::size_t cell = light == 1 ? region.first : region.last - 1;
+    // From the node beside the junction to the junction itself.
+    const double depth = junctions[which].depth, from = v.x(junction_node);
+    const std::size_t own = depth < from ? junction_node - 1 : std::min(junction_node, v.system.cells() - 1);
+    const double middle = 0.5 * (depth + from), reach = 0.5 * (from - depth) * std::sqrt(0.6);
+    *value -=
+        (from - depth) / 18 *
+        (5 * v.net_at(own, middle - reach) + 8 * v.net_at(own, middle) + 5 * v.net_at(own, middle + reach));
     figures.extrapolated_field = field_in_cell(v.system, cell, *value);
+    figures.extrapolated_doubt = std::abs(field_in_cell(v.system, cell, doubt));
 }
 
 // Charge of a node's box [m^-2] over its doping: zero charge is exact neutrality of the discrete equations.

@@ -21,12 +21,15 @@ struct JunctionFigures {
     /// Largest field of the junction, signed [V/m], at a node or, where the field is smooth, at the summit
     /// between two; the depth [m] of the node nearest to it.
     std::optional<double> peak_field, peak_depth;
-    /// How far from that node the summit may lie [m]: one cell where the field is smooth, 0 at a jump of
-    /// the doping.
+    /// How far from that node the summit may lie [m]: one cell where the field is smooth, as far as it stays
+    /// within a third of the mesh's tolerance where it is flat, 0 at a jump of the doping.
     double peak_depth_resolution = 0;
     /// The lightly doped side's field where it holds fewest carriers, carried to the junction by its doping
     /// alone, signed [V/m]: the figure that a hand estimate means.
     std::optional<double> extrapolated_field;
+    /// What the carriers that are left there may hide of it [V/m]: their share of the doping times the
+    /// doping's dose between that place and the junction.
+    double extrapolated_doubt = 0;
     /// Potential between the neutral neighbours, n side minus p side [V].
     std::optional<double> barrier;
     /// "reached through" and the like; empty when every figure is there.
