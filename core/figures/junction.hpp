@@ -22,7 +22,7 @@ struct JunctionFigures {
     /// between two; the depth [m] of the node nearest to it.
     std::optional<double> peak_field, peak_depth;
     /// How far from that node the summit may lie [m]: one cell where the field is smooth, as far as it stays
-    /// within a third of the mesh's tolerance where it is flat, 0 at a jump of the doping.
+    /// within a thousandth of the mesh's tolerance where it is flat, 0 at a jump of the doping.
     double peak_depth_resolution = 0;
     /// The lightly doped side's field where it holds fewest carriers, carried to the junction by its doping
     /// alone, signed [V/m]: the figure that a hand estimate means.

@@ -64,12 +64,11 @@ std::optional<double> total(double built_in, double forward) {
 void estimate_abrupt(const Site& site, double top_edge, double bottom_edge, double forward,
                      HandPoint& point) {
     if (std::isnan(top_edge) || std::isnan(bottom_edge)) return;
-    // Just inside the edges: at an edge on a step the lighter side is meant.
+    // The light side is the one that the depletion layer reaches farther into. Just inside its edge: at an
+    // edge on a step the lighter doping is meant.
     const double inside = 1e-9 * (bottom_edge - top_edge);
-    const double at_top = std::abs(site.net(top_edge + inside)),
-                 at_bottom = std::abs(site.net(bottom_edge - inside));
-    const bool light_below = at_bottom < at_top;
-    point.light = std::min(at_top, at_bottom);
+    const bool light_below = bottom_edge - site.junction.depth > site.junction.depth - top_edge;
+    point.light = std::abs(site.net(light_below ? bottom_edge - inside : top_edge + inside));
     double heavy = 0;
     const double from = light_below ? site.top : site.junction.depth,
                  to = light_below ? site.junction.depth : site.bottom;
@@ -150,11 +149,18 @@ std::string verdict_of(const HandPoint& point, double width, double field) {
     if (std::isnan(abrupt) && std::isnan(linear)) return at + "no hand formula applies";
     const bool trust_linear = std::isnan(abrupt) || (!std::isnan(linear) && linear < abrupt);
     const auto percent = [](double share) { return fmt::format("{:.2g} %", 100 * share); };
+    constexpr double far_off = 0.5;
+    const double best = trust_linear ? linear : abrupt;
+    const char* name = trust_linear ? "linearly graded" : "abrupt";
     std::string text =
-        at + fmt::format(
-                 "the equivalent {} junction is the one to use, {} off in width and field on "
-                 "average",
-                 trust_linear ? "linearly graded" : "abrupt", percent(trust_linear ? linear : abrupt));
+        at + (best > far_off
+                  ? fmt::format(
+                        "trust neither hand formula; even the equivalent {} junction is {} off in width and "
+                        "field on average",
+                        name, percent(best))
+                  : fmt::format(
+                        "the equivalent {} junction is the one to use, {} off in width and field on average",
+                        name, percent(best)));
     const double other = trust_linear ? abrupt : linear;
     if (!std::isnan(other))
         text += fmt::format(" ({}: {})", trust_linear ? "abrupt" : "linearly graded", percent(other));
