@@ -14,11 +14,6 @@ namespace bandwright {
 
 namespace {
 
-// Carriers that conduct without being counted as charge or in rates [m^-3]. They keep the level of a region
-// defined where a wide gap or cold leaves fewer carriers than one in 1e30 m^3; 1e-40 A/cm2 is far above what
-// they carry. No source: numerical practice.
-constexpr double background = 1e-30;
-
 // exp of +-600 leaves room for the products of a residual; beyond it a density has no influence on anything
 // else.
 constexpr double largest_exponent = 600;
@@ -141,7 +136,7 @@ void fluxes(const DiscreteSystem& system, const ChunkPotentials& at, std::size_t
         bernoulli_of(b_n, count);
         for (std::size_t i = 0; i < count; ++i) {
             const CellFlux f = electron_flux(speed_n[i], b_n.at(i), change_n[i], fall_n[i], n[i], n[i + 1]);
-            const double b = background * speed_n[i];
+            const double b = background_density * speed_n[i];
             out_n[i] = f.value - b * change_n[i];
             shift_n[i] = f.by_u + f.by_a - b;
             near_n[i] = -f.by_a - f.by_log_left + b;
@@ -149,7 +144,7 @@ void fluxes(const DiscreteSystem& system, const ChunkPotentials& at, std::size_t
         }
         for (std::size_t i = 0; i < count; ++i) {
             const CellFlux f = hole_flux(speed_p[i], b_n.at(i), change_p[i], fall_p[i], p[i], p[i + 1]);
-            const double b = background * speed_p[i];
+            const double b = background_density * speed_p[i];
             out_p[i] = f.value - b * change_p[i];
             shift_p[i] = f.by_u + f.by_a - b;
             near_p[i] = -f.by_a + f.by_log_left + b;
@@ -169,7 +164,7 @@ void fluxes(const DiscreteSystem& system, const ChunkPotentials& at, std::size_t
     for (std::size_t i = 0; i < count; ++i) {
         // ln n = ... + psi - phi_n with slope ratio; u = change of ln n + phi_n.
         const CellFlux f = electron_flux(speed_n[i], b_n.at(i), change_n[i], fall_n[i], n[i], n[i + 1]);
-        const double b = background * speed_n[i];
+        const double b = background_density * speed_n[i];
         out_n[i] = f.value - b * change_n[i];
         shift_n[i] = f.by_u + f.by_a - b;
         near_n[i] = -f.by_u * (1 - r_n[i]) - f.by_a - f.by_log_left * r_n[i] + b;
@@ -178,7 +173,7 @@ void fluxes(const DiscreteSystem& system, const ChunkPotentials& at, std::size_t
     for (std::size_t i = 0; i < count; ++i) {
         // ln p = ... + phi_p - psi with slope ratio; u = change of phi_p - ln p.
         const CellFlux f = hole_flux(speed_p[i], b_p.at(i), change_p[i], fall_p[i], p[i], p[i + 1]);
-        const double b = background * speed_p[i];
+        const double b = background_density * speed_p[i];
         out_p[i] = f.value - b * change_p[i];
         shift_p[i] = f.by_u + f.by_a - b;
         near_p[i] = -f.by_u * (1 - r_p[i]) - f.by_a + f.by_log_left * r_p[i] + b;

@@ -10,6 +10,11 @@
 
 namespace bandwright {
 
+/// Carriers that conduct without being counted as charge or in rates [m^-3]. They keep the level of a region
+/// defined where a wide gap or cold leaves fewer carriers than one in 1e30 m^3. 1e-40 A/cm2 is far above what
+/// they carry, and a current's floor says what they do. No source: numerical practice.
+inline constexpr double background_density = 1e-30;
+
 /// Local quantities at one end of a cell.
 struct EndState {
     /// Densities [m^-3], d(ln density)/d(eta) (1 for Boltzmann), ln gamma.

@@ -30,7 +30,11 @@ TerminalCurrent terminal_current(const DiscreteSystem& system, const State& stat
     const auto phi_size = [&](std::size_t cell) {
         return std::max({1.0, std::abs(state.phi_n(cell)), std::abs(state.phi_p(cell))});
     };
-    current.rounding = 2.3e-16 * (least_n * phi_size(a) + least_p * phi_size(b) + std::abs(integral));
+    const double of_background =
+        background_density * (system.electron_speed[a] * std::abs(state.phi_n(a + 1) - state.phi_n(a)) +
+                              system.hole_speed[b] * std::abs(state.phi_p(b + 1) - state.phi_p(b)));
+    current.rounding =
+        of_background + 2.3e-16 * (least_n * phi_size(a) + least_p * phi_size(b) + std::abs(integral));
     return current;
 }
 

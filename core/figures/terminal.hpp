@@ -16,7 +16,7 @@ struct TerminalCurrent {
     double flux = 0;
     /// Cell of least D_n n / h, and of least D_p p / h.
     std::size_t electron_cell = 0, hole_cell = 0;
-    /// The rounding floor of `flux`: what it cannot resolve [m^-2 s^-1].
+    /// The floor of `flux`: what rounding cannot resolve, and what the background carries [m^-2 s^-1].
     double rounding = 0;
 };
 
